@@ -22,7 +22,8 @@ type Job struct {
 	Stock   []Stock
 	Spare   Spare
 
-	places map[string]Position // key path ("linkage.links.crank.length") to place in the file
+	places  map[string]Position // key path ("linkage.links.crank.length") to place in the file
+	sources map[string]*source  // by file name, for the lines of later errors
 }
 
 // Shape is the form of a part.
@@ -106,8 +107,9 @@ type FramePlate struct {
 // Mount is the holes by which the frame is screwed to something.
 type Mount struct {
 	At       []outline.Point // in the linkage's coordinates
-	Diameter float64         // finished, mm
+	Diameter float64         // finished, mm; 0: by Bolt and Fit
 	Bolt     string          // designation when given, for the list
+	Fit      string          // of the bolt, when there is one and Diameter is 0
 }
 
 // CrossMember is a plate that stands between two frame plates, with tabs in their slots.

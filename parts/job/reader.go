@@ -1,0 +1,516 @@
+package job
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+	"unicode/utf8"
+
+	"go.yaml.in/yaml/v3"
+
+	"pinwright/parts/linkage"
+)
+
+// reader is the state of one reading: the files seen, the errors found, the places of the keys.
+type reader struct {
+	name    string
+	sources map[string]*source
+	open    func(string) ([]byte, error)
+	errs    Errors
+	places  map[string]Position
+	unit    [3]string // unit of bare numbers by dimension; "" when none is stated
+	noUnit  bool      // units is there but wrong: bare numbers are passed over
+	bare    [3][]unitless
+
+	planeSound map[string]bool          // links whose plane is known
+	groundAt   map[string]linkage.Point // where the ground pivots are
+}
+
+// unitless is a bare number where no unit is stated.
+type unitless struct {
+	at   spot
+	text string
+}
+
+func (r *reader) fail(at spot, hint, format string, args ...any) {
+	line := ""
+	if s := r.sources[at.File]; s != nil {
+		line = s.line(at.Line)
+	}
+	r.errs = append(r.errs, Error{at.Position, max(1, at.span), line, fmt.Sprintf(format, args...), hint})
+}
+
+// spotOf is the place of a node. The library counts columns in characters, as we do.
+func (r *reader) spotOf(n *yaml.Node) spot {
+	span := 1
+	if n.Kind == yaml.ScalarNode {
+		span = max(1, utf8.RuneCountInString(n.Value))
+		if n.Style&(yaml.DoubleQuotedStyle|yaml.SingleQuotedStyle) != 0 {
+			span += 2
+		}
+		left := utf8.RuneCountInString(r.sources[r.name].line(n.Line)) - n.Column + 1
+		span = max(1, min(span, left))
+	}
+	return spot{Position{r.name, max(1, n.Line), max(1, n.Column)}, span}
+}
+
+// read checks a node against a form. what names the thing in messages ("width"), where the table it
+// stands in ("link crank"), keyAt is the place of its key.
+func (r *reader) read(n *yaml.Node, f *form, path, what, where, advice string, keyAt spot) *value {
+	v := &value{form: f, at: r.spotOf(n), path: path}
+	if n.Kind != yaml.ScalarNode && n.Style&yaml.FlowStyle == 0 {
+		v.at = keyAt
+	}
+	if f.kind == passedOver {
+		return v
+	}
+	r.places[path] = v.at.Position
+	if !r.tame(n, v.at) {
+		return v
+	}
+	if f.kind == anEither {
+		f = f.pick(n)
+		if f == nil {
+			r.fail(v.at, advice, "%s: %s is wanted", what, v.form.wanted())
+			return v
+		}
+		v.form = f
+	}
+	empty := n.Kind == yaml.ScalarNode && n.ShortTag() == "!!null" && n.Style&(yaml.DoubleQuotedStyle|yaml.SingleQuotedStyle) == 0
+	if empty && (n.Value == "" || f.kind != aText && f.kind != aName) {
+		hint := advice
+		if hint == "" {
+			hint = f.wanted() + " is wanted"
+		}
+		if strings.Contains(r.sources[r.name].line(keyAt.Line), " #") {
+			hint = `everything after a # is a comment: put it in quotes if it belongs to the value, as in bolt: "#8"`
+		}
+		r.fail(keyAt, hint, "%s has no value", what)
+		return v
+	}
+	scalar := f.kind != aTable && f.kind != aNamed && f.kind != aList && f.kind != aPlace
+	if scalar && n.Kind != yaml.ScalarNode ||
+		(f.kind == aTable || f.kind == aNamed) && n.Kind != yaml.MappingNode ||
+		(f.kind == aList || f.kind == aPlace) && n.Kind != yaml.SequenceNode {
+		r.fail(v.at, advice, "%s: %s is wanted", what, f.wanted())
+		return v
+	}
+	switch f.kind {
+	case aQuantity:
+		v.number, v.sound = r.quantity(n.Value, f, what, advice, v.at)
+	case aWhole:
+		v.number, v.sound = r.whole(n.Value, f, what, advice, v.at)
+	case aFlag:
+		r.flag(n, v, what)
+	case aText, aName, aChoice:
+		r.word(n.Value, f, v, what, advice)
+	case aPlace:
+		r.place(n, f, v, what)
+	case aList:
+		r.list(n, f, v, what, where)
+	case aTable:
+		r.table(n, f, v, where, keyAt)
+	case aNamed:
+		r.named(n, f, v, what)
+	}
+	return v
+}
+
+// tame refuses the parts of YAML by which a text says less than it seems to.
+func (r *reader) tame(n *yaml.Node, at spot) bool {
+	switch {
+	case n.Kind == yaml.AliasNode:
+		r.fail(r.spotOf(n), "write the value out: the job file has no anchors and aliases", "*%s is a YAML alias", short(n.Value))
+	case n.Anchor != "":
+		r.fail(r.spotOf(n), "write the value out where it is used: the job file has no anchors and aliases", "&%s is a YAML anchor", short(n.Anchor))
+	case n.Style&yaml.TaggedStyle != 0:
+		r.fail(r.spotOf(n), "take it out: what a value is follows from its key", "%s is a YAML tag", short(n.Tag))
+	default:
+		return true
+	}
+	return false
+}
+
+// pick chooses the variant for a node: by its kind, tables by the key that tells them apart.
+func (f *form) pick(n *yaml.Node) *form {
+	var last *form
+	for i := range f.variants {
+		variant := &f.variants[i]
+		switch variant.kind {
+		case aTable:
+			if n.Kind != yaml.MappingNode {
+				continue
+			}
+			last = variant
+			if variant.when == "" || hasKey(n, variant.when) {
+				return variant
+			}
+		case aList, aPlace:
+			if n.Kind == yaml.SequenceNode {
+				return variant
+			}
+		default:
+			if n.Kind == yaml.ScalarNode {
+				return variant
+			}
+		}
+	}
+	return last
+}
+
+func hasKey(n *yaml.Node, name string) bool {
+	for i := 0; i+1 < len(n.Content); i += 2 {
+		if n.Content[i].Value == name {
+			return true
+		}
+	}
+	return false
+}
+
+// quantity reads a number with its unit and checks its bounds.
+func (r *reader) quantity(text string, f *form, what, advice string, at spot) (float64, bool) {
+	number, bare, bad := measure(text, f.dim, r.unit[f.dim])
+	if bad != nil {
+		hint := bad.hint
+		if hint == "" {
+			hint = advice
+		}
+		if hint == "" {
+			hint = f.wanted() + " is wanted"
+		}
+		r.fail(at, hint, "%s: %s", what, bad.message)
+		return 0, false
+	}
+	if bare {
+		r.bare[f.dim] = append(r.bare[f.dim], unitless{at, strings.TrimSpace(text)})
+		return 0, false
+	}
+	return number, r.inBounds(number, f, what, advice, at)
+}
+
+func (r *reader) inBounds(number float64, f *form, what, advice string, at spot) bool {
+	// Bounds in radians come from degrees: a hair's breadth is given.
+	const hair = 1e-9
+	switch {
+	case f.above && number <= f.low:
+		if number < 0 {
+			r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
+		} else {
+			r.fail(at, advice, "%s: %s is not more than zero", what, figureOf(number, f.dim))
+		}
+	case number < f.low-hair && f.low == 0:
+		r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
+	case number < f.low-hair:
+		r.fail(at, advice, "%s: %s is less than %s, the least that is taken for meant", what, figureOf(number, f.dim), figureOf(f.low, f.dim))
+	case number > f.high+hair:
+		r.fail(at, advice, "%s: %s is more than %s, the most that is taken for meant", what, figureOf(number, f.dim), figureOf(f.high, f.dim))
+	default:
+		return true
+	}
+	return false
+}
+
+// whole reads a whole number.
+func (r *reader) whole(text string, f *form, what, advice string, at spot) (float64, bool) {
+	n, err := strconv.Atoi(strings.TrimPrefix(strings.TrimSpace(text), "+"))
+	if err != nil {
+		r.fail(at, advice, "%s: %s is not a whole number", what, short(text))
+		return 0, false
+	}
+	return float64(n), r.inBounds(float64(n), f, what, advice, at)
+}
+
+func (r *reader) flag(n *yaml.Node, v *value, what string) {
+	quoted := n.Style&(yaml.DoubleQuotedStyle|yaml.SingleQuotedStyle) != 0
+	switch {
+	case n.Value == "true" && !quoted:
+		v.flag, v.sound = true, true
+	case n.Value == "false" && !quoted:
+		v.sound = true
+	default:
+		hint := "write true or false"
+		switch strings.ToLower(n.Value) {
+		case "yes", "y", "on", "true", "1":
+			hint = "write true"
+		case "no", "n", "off", "false", "0":
+			hint = "write false"
+		}
+		r.fail(v.at, hint, "%s: %s is neither true nor false", what, short(n.Value))
+	}
+}
+
+// longestText is the length of a title or of a material's name, in characters.
+const longestText = 200
+
+func (r *reader) word(word string, f *form, v *value, what, advice string) {
+	switch f.kind {
+	case aChoice:
+		for _, w := range f.words {
+			if w == word {
+				v.text, v.sound = word, true
+				return
+			}
+		}
+		hint := meant(word, f.words)
+		if hint == "" {
+			hint = "write " + oneOf(f.words)
+		}
+		r.fail(v.at, hint, "%s: unknown %s", what, short(word))
+	case aName:
+		if !f.rule.form.MatchString(word) {
+			r.fail(v.at, "allowed are "+f.rule.says, "%s: %s can't be %s", what, short(word), f.rule.noun)
+			return
+		}
+		v.text, v.sound = word, true
+	default:
+		switch {
+		case strings.TrimSpace(word) == "":
+			r.fail(v.at, advice, "%s is empty", what)
+		case utf8.RuneCountInString(word) > longestText:
+			r.fail(v.at, "shorten it", "%s has %d characters, more than the %d allowed", what, utf8.RuneCountInString(word), longestText)
+		case strings.ContainsAny(word, "\n\t"):
+			r.fail(v.at, "", "%s: one line of text is wanted", what)
+		default:
+			v.text, v.sound = strings.TrimSpace(word), true
+		}
+	}
+}
+
+func (r *reader) place(n *yaml.Node, f *form, v *value, what string) {
+	if len(n.Content) != 2 {
+		r.fail(v.at, "write [x, y]", "%s: a place has two coordinates, here are %d", what, len(n.Content))
+		return
+	}
+	coordinate := form{kind: aQuantity, dim: length, low: f.low, high: f.high}
+	x := r.read(n.Content[0], &coordinate, v.path+".0", what, "", "", v.at)
+	y := r.read(n.Content[1], &coordinate, v.path+".1", what, "", "", v.at)
+	v.x, v.y, v.sound = x.number, y.number, x.sound && y.sound
+}
+
+func (r *reader) list(n *yaml.Node, f *form, v *value, what, where string) {
+	if len(n.Content) < f.least || f.most > 0 && len(n.Content) > f.most {
+		switch {
+		case len(n.Content) == 0:
+			r.fail(v.at, "leave the key out, or put something in", "%s: the list is empty", what)
+		case f.least == f.most:
+			r.fail(v.at, "", "%s: %d values are wanted, here are %d", what, f.least, len(n.Content))
+		default:
+			r.fail(v.at, "", "%s: at most %d entries are taken, here are %d", what, f.most, len(n.Content))
+		}
+		return
+	}
+	v.sound = true
+	for i, c := range n.Content {
+		inside := where
+		if f.item.noun != "" {
+			inside = fmt.Sprintf("%s %d", f.item.noun, i+1)
+		}
+		item := r.read(c, f.item, v.path+"."+strconv.Itoa(i), what, inside, "", r.spotOf(c))
+		v.items = append(v.items, item)
+	}
+}
+
+// table reads fixed keys. A misspelt key whose meaning is plain is reported and then read as meant,
+// so that what depends on it is not reported as missing.
+func (r *reader) table(n *yaml.Node, f *form, v *value, where string, keyAt spot) {
+	if where == "" {
+		where = f.noun
+	}
+	first := map[string]spot{}
+	v.sound = true
+	for i := 0; i+1 < len(n.Content); i += 2 {
+		k, at := n.Content[i], r.spotOf(n.Content[i])
+		if !r.plainKey(k, at) {
+			continue
+		}
+		name := k.Value
+		spec := f.find(name)
+		if spec == nil {
+			spec = r.unknownKey(name, f, where, at, n, n.Content[i+1])
+			if spec == nil || v.has(spec.name) || hasKey(n, spec.name) {
+				continue
+			}
+			name = spec.name
+		}
+		if earlier, twice := first[name]; twice {
+			r.fail(at, "keep one of them", "%s is given twice in %s, first on line %d", name, where, earlier.Line)
+			continue
+		}
+		first[name] = at
+		e := entry{name: name, at: at}
+		e.value = r.read(n.Content[i+1], &spec.form, join2(v.path, name), name, childWhere(spec, where), spec.advice, at)
+		v.entries = append(v.entries, e)
+	}
+	for i := range f.keys {
+		if f.keys[i].need && !v.has(f.keys[i].name) {
+			r.fail(keyAt, f.keys[i].advice, "%s has no %s", where, f.keys[i].name)
+		}
+	}
+	if len(f.exactly) > 0 {
+		var given []string
+		for _, name := range f.exactly {
+			if v.has(name) {
+				given = append(given, name)
+			}
+		}
+		switch {
+		case len(given) == 0:
+			v.sound = false
+			r.fail(keyAt, "give "+oneOf(f.exactly), "%s: which kind is not said", where)
+		case len(given) > 1:
+			v.sound = false
+			r.fail(keyAt, "keep one of them", "%s: %s exclude each other", where, allOf(given))
+		}
+	}
+}
+
+func childWhere(spec *key, where string) string {
+	if spec.form.kind == aTable && spec.form.noun != "" && where != "" && where != "the job" {
+		return spec.name + " of " + where
+	}
+	return ""
+}
+
+func join2(path, name string) string {
+	if path == "" {
+		return name
+	}
+	return path + "." + name
+}
+
+// plainKey refuses keys that are lists, aliases, merges or empty.
+func (r *reader) plainKey(k *yaml.Node, at spot) bool {
+	switch {
+	case k.Kind == yaml.ScalarNode && k.ShortTag() == "!!merge":
+		r.fail(at, "write the keys out: the job file has no merging", "<< is a YAML merge")
+		return false
+	case k.Kind == yaml.ScalarNode && k.Value == "":
+		r.fail(at, "write key: value", "a key without a name")
+		return false
+	case k.Kind == yaml.SequenceNode || k.Kind == yaml.MappingNode:
+		r.fail(at, "write key: value", "a key must be a word, not something in brackets")
+		return false
+	}
+	return r.tame(k, at)
+}
+
+// unknownKey reports a key that the table does not have, and gives the one that was surely meant.
+func (r *reader) unknownKey(name string, f *form, where string, at spot, n, beside *yaml.Node) *key {
+	if colon := strings.IndexByte(name, ':'); colon > 0 && f.find(name[:colon]) != nil {
+		r.fail(at, "put a space after the colon: "+name[:colon]+": "+short(name[colon+1:]), "unknown key %s in %s", short(name), where)
+		return &key{name: name[:colon], form: form{kind: passedOver}}
+	}
+	var free []string // keys that are not used yet are meant more probably
+	for _, k := range f.names() {
+		if !hasKey(n, k) {
+			free = append(free, k)
+		}
+	}
+	near := nearest(name, free)
+	for i := range f.keys {
+		for _, slip := range f.keys[i].slips {
+			if strings.EqualFold(slip, name) && !hasKey(n, f.keys[i].name) {
+				near = f.keys[i].name
+			}
+		}
+	}
+	if near == "" {
+		near = nearest(name, f.names())
+	}
+	if home := homeOf(name); home != "" && (near == "" || editDistance(fold(near), fold(name)) > 1) {
+		r.fail(at, name+" belongs to "+home, "unknown key %s in %s", short(name), where)
+		return nil
+	}
+	if near == "" {
+		r.fail(at, "the keys here are "+allOf(f.names()), "unknown key %s in %s", short(name), where)
+		return nil
+	}
+	r.fail(at, "did you mean "+near+"?", "unknown key %s in %s", short(name), where)
+	return f.find(near)
+}
+
+// named reads free names with equal things.
+func (r *reader) named(n *yaml.Node, f *form, v *value, what string) {
+	if len(n.Content) == 0 {
+		r.fail(v.at, "leave the key out, or put something in", "%s is empty", what)
+		return
+	}
+	first := map[string]spot{}
+	v.sound = true
+	for i := 0; i+1 < len(n.Content); i += 2 {
+		k, at := n.Content[i], r.spotOf(n.Content[i])
+		if !r.plainKey(k, at) {
+			continue
+		}
+		if colon := strings.IndexByte(k.Value, ':'); colon > 0 && f.rule.form.MatchString(k.Value[:colon]) {
+			r.fail(at, "put a space after the colon: "+k.Value[:colon]+": "+short(k.Value[colon+1:]), "%s: %s can't be %s", what, short(k.Value), f.rule.noun)
+			continue
+		}
+		noun := f.item.noun
+		if noun == "" {
+			noun = what
+		}
+		sound := f.rule.form.MatchString(k.Value)
+		if !sound {
+			r.fail(at, "allowed are "+f.rule.says, "%s: %s can't be %s", what, short(k.Value), f.rule.noun)
+		}
+		same := k.Value
+		if f.rule == fileName {
+			same = strings.ToLower(same) // they name files, and many disks take Crank for crank
+		}
+		if earlier, twice := first[same]; twice {
+			r.fail(at, "give each a name of its own", "%s %s is named twice, first on line %d", noun, short(k.Value), earlier.Line)
+			continue
+		}
+		first[same] = at
+		item := r.read(n.Content[i+1], f.item, join2(v.path, k.Value), k.Value, noun+" "+short(k.Value), "", at)
+		item.sound = item.sound && sound
+		v.entries = append(v.entries, entry{k.Value, at, item})
+	}
+}
+
+// tellBare reports the numbers without a unit, once for lengths and once for angles of each file.
+func (r *reader) tellBare() {
+	if r.noUnit {
+		return
+	}
+	for _, dim := range []dimension{length, angle} {
+		noun, example := "length", "mm"
+		if dim == angle {
+			noun, example = "angle", "deg"
+		}
+		told := map[string]bool{}
+		for i, first := range r.bare[dim] {
+			if told[first.at.File] {
+				continue
+			}
+			told[first.at.File] = true
+			others, last := 0, 0
+			next := 0
+			for _, b := range r.bare[dim][i+1:] {
+				if b.at.File == first.at.File {
+					others++
+					last = b.at.Line
+					if next == 0 {
+						next = last
+					}
+				}
+			}
+			also := ""
+			switch {
+			case others == 1:
+				also = fmt.Sprintf(", nor has one more %s, on line %d", noun, next)
+			case others > 1 && next == last:
+				also = fmt.Sprintf(", nor have %d more %ss, on line %d", others, noun, next)
+			case others > 1:
+				also = fmt.Sprintf(", nor have %d more %ss, on lines %d to %d", others, noun, next, last)
+			}
+			r.fail(first.at, fmt.Sprintf("write %s%s, or state units: {%s: %s} once", first.text, example, noun, example),
+				"%s has no unit%s", short(first.text), also)
+		}
+	}
+}
+
+// degrees writes an angle for a message.
+func degrees(radians float64) string { return figure(radians / math.Pi * 180) }
