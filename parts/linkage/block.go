@@ -28,6 +28,7 @@ type blockBar struct {
 // carried is joint k at a + alpha (b-a) + beta left(b-a).
 type carried struct {
 	k, a, b     int
+	link        int
 	alpha, beta float64
 }
 

@@ -189,6 +189,11 @@ func (c *Cycle) walkerAt(k int) *walker {
 // frameOf turns a position back into a frame, with the gaps that a walk needs.
 func (pr *program) frameOf(p *Position) *frame {
 	f := pr.newFrame()
+	pr.loadFrame(f, p)
+	return f
+}
+
+func (pr *program) loadFrame(f *frame, p *Position) {
 	f.angle = p.Angle
 	copy(f.p, p.Places)
 	copy(f.v, p.Speeds)
@@ -201,7 +206,6 @@ func (pr *program) frameOf(p *Position) *frame {
 			f.p[s.dyad.j], f.v[s.dyad.j] = at, speed
 		}
 	}
-	return f
 }
 
 // Placement returns the rigid motion that takes the link's own frame (see LinkFrame) to the plane of

@@ -68,7 +68,7 @@ func compile(joints int, pins [][]int, shape [][]Point, steps []planStep, ground
 			}
 			for _, j := range s.joints {
 				if n > 0 || j != tip {
-					ps.carry = append(ps.carry, carry(j, a, b, local(k, j), local(k, a), local(k, b)))
+					ps.carry = append(ps.carry, carry(k, j, a, b, local(k, j), local(k, a), local(k, b)))
 				}
 			}
 		case dyadStep:
@@ -88,7 +88,7 @@ func compile(joints int, pins [][]int, shape [][]Point, steps []planStep, ground
 				bs = append(bs, blockBar{a, b, dist(local(k, a), local(k, b))})
 				for _, j := range pins[k] {
 					if j != a && j != b {
-						cs = append(cs, carry(j, a, b, local(k, j), local(k, a), local(k, b)))
+						cs = append(cs, carry(k, j, a, b, local(k, j), local(k, a), local(k, b)))
 					}
 				}
 			}
@@ -121,10 +121,10 @@ func base(pins []int, shape []Point, allowed []bool) (a, b int) {
 	return a, b
 }
 
-func carry(k, a, b int, pk, pa, pb Point) carried {
+func carry(link, k, a, b int, pk, pa, pb Point) carried {
 	d, e := sub(pb, pa), sub(pk, pa)
 	n := dot(d, d)
-	return carried{k: k, a: a, b: b, alpha: dot(e, d) / n, beta: cross(d, e) / n}
+	return carried{link: link, k: k, a: a, b: b, alpha: dot(e, d) / n, beta: cross(d, e) / n}
 }
 
 // clone returns a program with blocks of its own.

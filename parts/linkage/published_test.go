@@ -67,3 +67,11 @@ func BenchmarkEightBarLeg(b *testing.B) {
 	}
 	b.ReportMetric(float64(b.N*steps)/b.Elapsed().Seconds(), "steps/s")
 }
+
+func TestJansenReport(t *testing.T) {
+	r, err := Analyse(jansen(), Options{})
+	if err != nil {
+		t.Fatal(err)
+	}
+	t.Logf("%+v", r)
+}
