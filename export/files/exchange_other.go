@@ -1,0 +1,5 @@
+//go:build !linux && !darwin
+
+package files
+
+func exchange(string, string) error { return errNoExchange }
