@@ -1,0 +1,90 @@
+// Package dxf writes sheets as DXF drawings and reads drawings back, strictly.
+//
+// What is written is the ASCII form of AC1015 (R2000), millimetres, in the order of the work: one
+// closed LWPOLYLINE with bulges for every outline, CIRCLE for a full circle, LINE or open
+// LWPOLYLINE for an engraved stroke. The layer of an entity says what the beam does along it.
+// Coordinates are written with as many digits as it takes to read the same number back, so that a
+// drawing that was read is the drawing that was planned, bit for bit. No dates, names or random
+// identifiers are inside: the same sheet gives the same bytes.
+//
+// The format is that of the DXF Reference for AutoCAD 2000 (group codes, handles, owners, the
+// tables, blocks and objects that a complete drawing has).
+package dxf
+
+import "pinwright/export"
+
+// The layers. The first three are work for the beam, in the order in which a part is worked;
+// LayerEdge is the outline of the sheet, for the eye only.
+const (
+	LayerEngrave = "ENGRAVE"
+	LayerInside  = "CUT-INSIDE"
+	LayerOutside = "CUT-OUTSIDE"
+	LayerEdge    = "SHEET-EDGE"
+)
+
+// LayerOf returns the layer of an operation, or "" for one that does not exist.
+func LayerOf(op export.Operation) string {
+	switch op {
+	case export.Engrave:
+		return LayerEngrave
+	case export.CutInside:
+		return LayerInside
+	case export.CutOutside:
+		return LayerOutside
+	}
+	return ""
+}
+
+// OperationOf returns what the beam does on a layer; false for a layer that is not work (the edge
+// of the sheet, or a layer that is not ours).
+func OperationOf(layer string) (export.Operation, bool) {
+	switch layer {
+	case LayerEngrave:
+		return export.Engrave, true
+	case LayerInside:
+		return export.CutInside, true
+	case LayerOutside:
+		return export.CutOutside, true
+	}
+	return 0, false
+}
+
+// Units is the unit of a drawing as its header states it ($INSUNITS).
+type Units int
+
+// The units that are told apart; a drawing may state any number.
+const (
+	Unitless   Units = 0
+	Inch       Units = 1
+	Millimetre Units = 4
+)
+
+// String names the unit.
+func (u Units) String() string {
+	names := map[Units]string{
+		Unitless: "no unit", Inch: "inches", 2: "feet", Millimetre: "millimetres", 5: "centimetres", 6: "metres",
+	}
+	if s, ok := names[u]; ok {
+		return s
+	}
+	return "unit number " + itoa(int(u))
+}
+
+// Options chooses the colours and extras of a drawing. The zero value is the usual drawing.
+type Options struct {
+	Engrave int // colour of the layers as AutoCAD colour index, 1 to 255; 0: the default
+	Inside  int
+	Outside int
+	Edge    int
+
+	SheetEdge bool // also draw the edge of the sheet, on a layer that is not plotted
+}
+
+// The default colours: a blue, a green and an orange that are told apart on white and on black, and
+// grey for the edge. They carry no meaning: the layer's name does.
+const (
+	DefaultEngrave = 174
+	DefaultInside  = 94
+	DefaultOutside = 34
+	DefaultEdge    = 253
+)
