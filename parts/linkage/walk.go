@@ -70,6 +70,10 @@ func (w *walker) to(angle float64) (stop, bool) {
 	for len(w.targets) > 0 {
 		t := w.targets[len(w.targets)-1]
 		width := math.Abs(t - w.cur.angle)
+		if width == 0 {
+			w.targets = w.targets[:len(w.targets)-1]
+			continue
+		}
 		if width > longestStep*(1+1e-9) {
 			n := math.Ceil(width / longestStep)
 			w.targets = append(w.targets, w.cur.angle+(t-w.cur.angle)/n)
@@ -81,6 +85,7 @@ func (w *walker) to(angle float64) (stop, bool) {
 		}
 		switch {
 		case v == sure:
+			w.noteLeaving()
 			w.cur, w.next = w.next, w.cur
 			w.targets = w.targets[:len(w.targets)-1]
 		case width > shortestStep:
@@ -94,6 +99,15 @@ func (w *walker) to(angle float64) (stop, bool) {
 		}
 	}
 	return stop{}, true
+}
+
+// noteLeaving records the change points that lie exactly at the frame which the walk now leaves.
+func (w *walker) noteLeaving() {
+	for i, flat := range w.cur.flat {
+		if flat && !w.next.flat[i] {
+			w.changes = append(w.changes, change{i, w.cur.angle})
+		}
+	}
 }
 
 // try solves the frame at the angle into next. at is the step of the program that is to blame when
@@ -163,7 +177,7 @@ func (pr *program) solveBlock(s *progStep, f, g *frame, delta float64) verdict {
 	for _, j := range b.joints {
 		mean := Point{X: (f.v[j].X + g.v[j].X) / 2, Y: (f.v[j].Y + g.v[j].Y) / 2}
 		off := dist(g.p[j], addScaled(f.p[j], delta, mean))
-		if off > math.Abs(delta)*(0.02*(norm(f.v[j])+norm(g.v[j]))+1e-3*b.size) {
+		if off > math.Abs(delta)*(0.02*(norm(f.v[j])+norm(g.v[j]))+1e-3*b.size)+1e-11*b.size {
 			return open
 		}
 	}
