@@ -126,6 +126,9 @@ type lengthRow struct {
 	sound    bool
 }
 
+// mostLengths is how many rows of a table of lengths are taken.
+const mostLengths = 5000
+
 // lengthColumns are the columns of a table of lengths; the unit of the last one may be in its name,
 // as in length_mm.
 var (
@@ -178,6 +181,10 @@ func (r *reader) lengthTable(v *value) (out []lengthRow, sound bool) {
 		}
 	}
 	if !sound {
+		return nil, false
+	}
+	if len(rows) > mostLengths {
+		r.fail(rows[0][0].at, "is it the right file?", "the table has %d rows, more than the %d that are taken", len(rows)-1, mostLengths)
 		return nil, false
 	}
 	form := positive(5000)

@@ -13,8 +13,9 @@ type cycleTable struct {
 	file      string
 	tolerance float64 // mm
 	columns   []jointColumn
-	drive     []cell // as written, empty when there is no such column
-	rows      []spot // place of each row
+	drive     []cell          // as written, empty when there is no such column
+	rows      []spot          // place of each row
+	wrong     map[string]bool // ground joints that the table puts elsewhere than the job
 }
 
 // jointColumn is the way of one joint.
@@ -51,7 +52,7 @@ func (r *reader) cycle(v *value) *cycleTable {
 	if !ok {
 		return nil
 	}
-	c := &cycleTable{file: v.get("file").text, tolerance: v.get("tolerance").numberOr(0.01)}
+	c := &cycleTable{wrong: map[string]bool{}, file: v.get("file").text, tolerance: v.get("tolerance").numberOr(0.01)}
 	heading := rows[0]
 	driveColumn, driveUnit := -1, ""
 	type pair struct {
@@ -168,6 +169,7 @@ func (r *reader) jointsOfCycle(joints []linkage.Joint, c *cycleTable, drafts []d
 			at := c.columnAt(joints[i].Name)
 			for k, p := range path {
 				if d := math.Hypot(p.X-g.At.X, p.Y-g.At.Y); d > c.tolerance {
+					c.wrong[joints[i].Name] = true
 					r.fail(at, "correct the ground place, or take the ground out if the joint moves", "ground joint %s: the job puts it at [%s, %s], %s of the table %s mm from there (tolerance %s mm)",
 						joints[i].Name, figure(g.At.X), figure(g.At.Y), c.row(k), figure(d), figure(c.tolerance))
 					break
@@ -220,6 +222,10 @@ func (c *cycleTable) columnAt(joint string) spot {
 func (r *reader) lengthsFromCycle(dr *draft, c *cycleTable) {
 	paths := make([][]linkage.Point, len(dr.pins))
 	for i, p := range dr.pins {
+		if c.wrong[p] {
+			dr.sound = false
+			return
+		}
 		paths[i] = c.path(p)
 		if paths[i] != nil {
 			continue
@@ -258,7 +264,7 @@ func (r *reader) lengthsFromCycle(dr *draft, c *cycleTable) {
 		for i := range paths {
 			p := inFrame(paths[base][row], paths[far][row], paths[i][row])
 			// A needle of a triangle turns a small error of length into a large one of height.
-			if math.Abs(p.Y-form[i].Y) > math.Max(c.tolerance, math.Sqrt(c.tolerance*distance(form[base], form[far]))) {
+			if first := inFrame(paths[base][0], paths[far][0], paths[i][0]); math.Abs(p.Y-first.Y) > math.Max(c.tolerance, math.Sqrt(c.tolerance*distance(form[base], form[far]))) {
 				r.fail(c.rows[row], "export one assembly of the linkage", "link %s: pin %s changes sides at %s", dr.name, dr.pins[i], c.row(row))
 				dr.sound = false
 				return

@@ -31,11 +31,10 @@ type form struct {
 	rule      *nameRule // aName, and the names of aNamed
 	item      *form     // aList, aNamed
 	least     int       // aList, aNamed: fewest entries
-	most      int       // aList: most entries; 0: any number
+	most      int       // aList: most entries; 0: as many as are taken anywhere
 	keys      []key     // aTable
 	exactly   []string  // aTable: exactly one of these keys must be there
 	variants  []form    // anEither: tried by what stands there
-	when      string    // variant that is a table: taken when it has this key
 }
 
 // key is one key of a table.
@@ -69,7 +68,7 @@ func positive(high float64) form {
 }
 
 var (
-	flag  = form{kind: aFlag}
+	truth = form{kind: aFlag}
 	text  = form{kind: aText}
 	place = form{kind: aPlace, dim: length, low: -farthest, high: farthest}
 	turn  = between(angle, -20*math.Pi, 20*math.Pi)
@@ -119,7 +118,7 @@ func (f *form) wanted() string {
 	case aPlace:
 		return "a place [x, y]"
 	case aList:
-		return "a list such as [" + f.item.sample() + ", " + f.item.sample() + "]"
+		return "a list such as [" + f.item.sample("A") + ", " + f.item.sample("B") + "]"
 	case aTable:
 		if len(f.keys) > 1 {
 			return "keys with values, {" + f.keys[0].name + ": ..., " + f.keys[1].name + ": ...}"
@@ -137,8 +136,8 @@ func (f *form) wanted() string {
 	return "text"
 }
 
-// sample is a short example of an entry of a list.
-func (f *form) sample() string {
+// sample is a short example of an entry of a list, with a name to use in it.
+func (f *form) sample(name string) string {
 	switch f.kind {
 	case aQuantity:
 		if f.dim == angle {
@@ -150,5 +149,5 @@ func (f *form) sample() string {
 	case aTable:
 		return "{...}"
 	}
-	return "A"
+	return name
 }

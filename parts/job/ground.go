@@ -6,13 +6,14 @@ import (
 	"pinwright/parts/linkage"
 )
 
-// groundOf reads a pivot.
+// groundOf reads a pivot. One that is not sound comes back with an empty range, so that nothing is
+// concluded from its place.
 func (r *reader) groundOf(v *value) *linkage.Ground {
 	if v.form.kind != aTable {
+		if !v.ok() {
+			return &linkage.Ground{Range: &linkage.Range{}}
+		}
 		return &linkage.Ground{At: pointOf(v)}
-	}
-	if !v.sound {
-		return &linkage.Ground{}
 	}
 	if v.has("centre") {
 		return r.arcPivot(v)
@@ -23,13 +24,13 @@ func (r *reader) groundOf(v *value) *linkage.Ground {
 func (r *reader) linePivot(v *value) *linkage.Ground {
 	from, to := v.get("from"), v.get("to")
 	if !from.ok() || !to.ok() {
-		return &linkage.Ground{}
+		return &linkage.Ground{Range: &linkage.Range{}}
 	}
 	a, b := pointOf(from), pointOf(to)
 	run := math.Hypot(b.X-a.X, b.Y-a.Y)
 	if run == 0 {
 		r.fail(to.at, "give two different places, or ground: [x, y] for a fixed pivot", "from and to are the same place")
-		return &linkage.Ground{At: a}
+		return &linkage.Ground{At: a, Range: &linkage.Range{From: a, To: b}}
 	}
 	at := linkage.Point{X: (a.X + b.X) / 2, Y: (a.Y + b.Y) / 2}
 	if set := v.get("at"); set.ok() {
@@ -53,7 +54,7 @@ const onLine = 0.002
 func (r *reader) arcPivot(v *value) *linkage.Ground {
 	from, to, radius, centre := v.get("from"), v.get("to"), v.get("radius"), v.get("centre")
 	if !from.ok() || !to.ok() || !radius.ok() || !centre.ok() {
-		return &linkage.Ground{}
+		return &linkage.Ground{Range: &linkage.Range{}}
 	}
 	if to.number <= from.number || to.number-from.number > fullTurn {
 		r.fail(to.at, "the arc runs counter-clockwise, at most one turn: to is greater than from", "the arc goes from %s to %s deg", degrees(from.number), degrees(to.number))

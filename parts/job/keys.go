@@ -17,7 +17,7 @@ const (
 	pinAdvice   = "say bolt: M4, or bearing: 624, or shaft: 6mm"
 )
 
-var jobForm = table("the job",
+var jobForm = table("the job file",
 	key{name: "job", need: true, form: name(fileName), about: "Name of the job. It names files: letters, digits, hyphens.", advice: "write job: my-mechanism", slips: []string{"name"}},
 	key{name: "title", form: text, about: "What it is, in a line of your own words."},
 	key{name: "units", form: unitsForm, about: "Units of bare numbers. Without it every number carries its own unit (3mm, 0.25in, 15deg).", slips: []string{"unit"}},
@@ -27,7 +27,7 @@ var jobForm = table("the job",
 	key{name: "copies", form: listOf(copyForm), about: "How often the linkage is built, at which phase, which of them mirrored. Without it: once."},
 	key{name: "pins", form: pinsForm, about: "What goes through each joint; default is for all joints that are not named.", advice: "write pins: {default: {bolt: M4, fit: medium}}", slips: []string{"bolts", "hardware"}},
 	key{name: "spare", form: spareForm, about: "Hardware bought on top."},
-	key{name: "stock", need: true, form: stocksForm, about: "The sheets on the shelf, each kind by a name of your choice.", advice: "write stock: {clear3: {material: cast acrylic, thickness: 3mm, sheet: [600mm, 400mm], margin: 5mm, kerf: ...}}; " + kerfAdvice, slips: []string{"sheets", "materials"}},
+	key{name: "stock", need: true, form: stocksForm, about: "The sheets on the shelf, each kind by a name of your choice.", advice: "write stock: {clear3: {material: cast acrylic, thickness: 3mm, sheet: [600mm, 400mm], margin: 5mm, kerf: ...}}", slips: []string{"sheets", "materials"}},
 )
 
 var unitsForm = table("units",
@@ -60,7 +60,7 @@ var jointForm = table("joint",
 var groundForm = either(
 	place,
 	form{
-		kind: aTable, noun: "arc of the pivot", when: "centre",
+		kind: aTable, noun: "arc of the pivot",
 		keys: []key{
 			{name: "centre", need: true, form: place, about: "Centre of the arc."},
 			{name: "radius", need: true, form: positive(farthest), about: "Radius of the arc."},
@@ -85,7 +85,7 @@ var cycleForm = table("cycle",
 )
 
 var linkForm = table("link",
-	key{name: "pins", form: form{kind: aList, item: &jointNameForm, least: 1, most: 40}, about: "Joints on the link. The first is its origin, the second lies on its x axis.", advice: "write pins: [A, B]", slips: []string{"joints", "between"}},
+	key{name: "pins", form: form{kind: aList, item: &jointNameForm, least: 1, most: 24}, about: "Joints on the link. The first is its origin, the second lies on its x axis.", advice: "write pins: [A, B]", slips: []string{"joints", "between"}},
 	key{name: "length", form: positive(5000), about: "Distance of the two pins."},
 	key{name: "lengths", form: named(pairName, positive(5000)), about: "Distances of pairs of pins, {A-B: 50, B-C: 40}: for n pins 2n-3 of them."},
 	key{name: "at", form: named(jointName, place), about: "Places of the pins in a frame of the link's own, instead of lengths.", slips: []string{"places"}},
@@ -99,10 +99,10 @@ var linkForm = table("link",
 	key{name: "around", form: listOf(obstacleForm), about: "Obstacles that a bent bar goes round, in the link's frame (first pin at [0, 0], second on the x axis).", slips: []string{"obstacles", "avoid"}},
 	filletKey,
 	key{name: "foot", form: footForm, about: "Rounded toe at a traced joint.", slips: []string{"toe"}},
-	key{name: "windows", form: flag, about: "Lightening windows, as the edge distance allows.", slips: []string{"holes", "lightening"}},
+	key{name: "windows", form: truth, about: "Lightening windows, as the edge distance allows.", slips: []string{"holes", "lightening"}},
 	rimKey,
 	key{name: "bores", form: named(jointName, boreForm), about: "Holes that differ from what the pin asks for, by joint.", slips: []string{"bore"}},
-	key{name: "phase-mark", form: flag, about: "Engraves the direction of the crank on a disc or crank arm.", slips: []string{"mark"}},
+	key{name: "phase-mark", form: truth, about: "Engraves the direction of the crank on a disc or crank arm.", slips: []string{"mark"}},
 )
 
 var jointNameForm = name(jointName)
@@ -174,7 +174,7 @@ var copyForm = table("copy",
 	key{name: "name", form: name(fileName), about: "Name of the copy; copies of a count are called name-1, name-2."},
 	key{name: "count", form: whole(1, 200), about: "How many. Left out: 1.", slips: []string{"number", "quantity"}},
 	key{name: "phase", form: either(turn, listOf(turn)), about: "Angle of the drive ahead of the job's own, one for all or one for each.", slips: []string{"phases", "offset"}},
-	key{name: "mirror", form: flag, about: "Built as the mirror image.", slips: []string{"mirrored", "flip"}},
+	key{name: "mirror", form: truth, about: "Built as the mirror image.", slips: []string{"mirrored", "flip"}},
 )
 
 var pinsForm = form{kind: aNamed, rule: jointName, item: &pinForm, least: 1}
@@ -209,7 +209,7 @@ var stockForm = table("stock",
 	key{name: "kerf", need: true, form: between(length, 0, 1.5), about: "FULL width that the beam takes away, not the loss on one side. Measured, never guessed.", advice: kerfAdvice},
 	key{name: "compensated-by", form: choice("pinwright", "shop"), about: "Who moves the cut off the line by half the kerf: pinwright (paths are the beam's middle) or the shop (paths are finished size). Left out: pinwright."},
 	key{name: "grain", form: choice(string(NoGrain), string(HalfTurn), string(Quarter), string(Fixed)), about: "How parts may be turned on the sheet: none (free), half-turn, quarter-turn, fixed. Left out: none."},
-	key{name: "flip", form: flag, about: "Parts may be turned over. Left out: false."},
+	key{name: "flip", form: truth, about: "Parts may be turned over. Left out: false."},
 	key{name: "price", form: between(plain, 0, 1e6), about: "Price of a sheet, in your money.", slips: []string{"cost"}},
 )
 

@@ -10,7 +10,7 @@ import (
 
 // lengthsOf collects the lengths of a link from where they are stated, and checks that they are
 // between its pins, agree, close triangles and fix its shape.
-func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable) {
+func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable, tablesSound bool) {
 	v, where := dr.v, "link "+dr.name
 	broken := v.get("length") != nil && !v.get("length").ok() || v.get("lengths") != nil && !v.get("lengths").ok()
 	ways := 0
@@ -21,7 +21,8 @@ func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable) {
 	}
 	if ways > 1 {
 		r.fail(dr.at, "keep one of length, lengths and at", "%s gives its lengths in %d ways", where, ways)
-		broken = true
+		dr.sound = false
+		return
 	}
 	if l := v.get("length"); l != nil && dr.sound {
 		switch {
@@ -39,6 +40,12 @@ func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable) {
 		a, b, _ := strings.Cut(e.name, "-")
 		if !pairName.form.MatchString(e.name) || !dr.sound {
 			continue
+		}
+		if m := dr.meant[a]; m != "" {
+			a = m
+		}
+		if m := dr.meant[b]; m != "" {
+			b = m
 		}
 		if a == b {
 			r.fail(e.at, "name two different pins", "%s: %s is a pin and itself", where, e.name)
@@ -69,7 +76,7 @@ func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable) {
 	if dr.sound && !broken && cyc != nil {
 		r.lengthsFromCycle(dr, cyc)
 	}
-	if !dr.sound || broken {
+	if !dr.sound || broken || !tablesSound {
 		dr.sound = false
 		return
 	}

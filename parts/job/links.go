@@ -14,9 +14,9 @@ type draft struct {
 	v       *value // nil for a link that only the table names
 	at      spot
 	pins    []string
-	asked   bool     // pins are stated
-	lengths []stated // as given: link, then table
-	sound   bool     // pins and lengths are right so far: what follows from them may be checked
+	meant   map[string]string // misspelt joints, and what they were taken for
+	lengths []stated          // as given: link, then table
+	sound   bool              // pins and lengths are right so far: what follows from them may be checked
 }
 
 // stated is a length and where it is said.
@@ -47,9 +47,14 @@ func (r *reader) linkage(v *value, d defaults, j *Job) {
 	if cyc != nil {
 		joints = r.jointsOfCycle(joints, cyc, drafts)
 	}
-	names := make([]string, len(joints))
+	var names []string
+	tableSound = tableSound && (v.get("table") == nil || v.get("table").ok())
+	if v.has("cycle") && cyc == nil {
+		joints = joinedByPins(joints, drafts)
+	}
+	names = names[:0]
 	for i := range joints {
-		names[i] = joints[i].Name
+		names = append(names, joints[i].Name)
 	}
 	pinsSound := tableSound && (v.get("cycle") == nil || cyc != nil) && v.get("links").ok() && v.get("joints").ok()
 	for i := range drafts {
@@ -57,7 +62,7 @@ func (r *reader) linkage(v *value, d defaults, j *Job) {
 		r.pinsOf(dr, names, rows, tableSound)
 		r.placeNames(dr)
 		pinsSound = pinsSound && dr.sound
-		r.lengthsOf(dr, rows, cyc)
+		r.lengthsOf(dr, rows, cyc, tableSound && (cyc != nil || !v.has("cycle")))
 		j.Linkage.Links = append(j.Linkage.Links, linkage.Link{Name: dr.name, Pins: dr.pins, Lengths: lengthsMM(dr.lengths)})
 	}
 	j.Linkage.Joints = joints
@@ -124,11 +129,11 @@ func (r *reader) fixedAt(a, b linkage.Joint) bool {
 func (r *reader) drafts(v *value, rows []lengthRow) []draft {
 	var out []draft
 	for _, e := range v.all() {
-		out = append(out, draft{name: e.name, v: e.value, at: e.at, sound: e.value.sound})
+		out = append(out, draft{name: e.name, v: e.value, at: e.at, sound: e.value.sound, meant: map[string]string{}})
 	}
 	for _, row := range rows {
 		if !slices.ContainsFunc(out, func(d draft) bool { return d.name == row.link }) {
-			out = append(out, draft{name: row.link, at: row.linkAt, sound: true})
+			out = append(out, draft{name: row.link, at: row.linkAt, sound: true, meant: map[string]string{}})
 			r.places["linkage.links."+row.link] = row.linkAt.Position
 		}
 	}
@@ -144,6 +149,9 @@ func (r *reader) pinsOf(dr *draft, joints []string, rows []lengthRow, tableSound
 			dr.sound = false
 			return
 		}
+		if known != name {
+			dr.meant[name] = known
+		}
 		if contains(dr.pins, known) {
 			if known == name {
 				r.fail(at, "name each joint once", "link %s has pin %s twice", dr.name, name)
@@ -156,7 +164,6 @@ func (r *reader) pinsOf(dr *draft, joints []string, rows []lengthRow, tableSound
 	places := dr.v.get("at")
 	switch {
 	case dr.v.has("pins"):
-		dr.asked = true
 		for _, p := range dr.v.get("pins").each() {
 			if p.ok() {
 				add(p.text, p.at)
@@ -169,7 +176,6 @@ func (r *reader) pinsOf(dr *draft, joints []string, rows []lengthRow, tableSound
 			return
 		}
 	case places != nil:
-		dr.asked = true
 		for _, e := range places.all() {
 			add(e.name, e.at)
 		}
@@ -202,6 +208,19 @@ func (r *reader) placeNames(dr *draft) {
 	if _, ok := r.places["linkage.links."+dr.name+".pins"]; !ok {
 		r.places["linkage.links."+dr.name+".pins"] = dr.at.Position
 	}
+}
+
+// joinedByPins adds the joints that links name and the job does not list: with a cycle table that
+// could not be read, they may be in it.
+func joinedByPins(joints []linkage.Joint, drafts []draft) []linkage.Joint {
+	for _, d := range drafts {
+		for _, p := range d.v.get("pins").each() {
+			if p.ok() && !slices.ContainsFunc(joints, func(j linkage.Joint) bool { return j.Name == p.text }) {
+				joints = append(joints, linkage.Joint{Name: p.text})
+			}
+		}
+	}
+	return joints
 }
 
 // unused reports joints on no link.
@@ -304,6 +323,7 @@ func (r *reader) build1(dr *draft, drafts []draft, d defaults, j *Job) Link {
 	switch {
 	case v == nil:
 		r.fail(dr.at, "write "+dr.name+": {plane: 1} under links", "link %s of the table has no plane", dr.name)
+	case !v.has("plane") && v.torn:
 	case !v.has("plane"):
 		r.fail(dr.at, planeAdvice, "link %s has no plane", dr.name)
 	default:

@@ -12,7 +12,7 @@ import (
 // words the first one is taken; a word that begins alike is better than none.
 func nearest(word string, among []string) string {
 	plain := fold(word)
-	best, least := "", 1+max(1, utf8.RuneCountInString(word)/3)
+	best, least := "", 1+max(1, (utf8.RuneCountInString(word)+1)/3)
 	for _, candidate := range among {
 		if candidate == word {
 			continue

@@ -89,7 +89,7 @@ func (r *reader) job(data []byte) Job {
 		top = r.spotOf(root)
 	}
 	r.findUnits(root)
-	v := r.read(root, &jobForm, "", "the job file", "the job", "begin with job: my-mechanism", top)
+	v := r.read(root, &jobForm, "", "the job file", "", "begin with job: my-mechanism", top)
 	if !v.sound && len(v.entries) == 0 {
 		return Job{}
 	}
@@ -105,6 +105,7 @@ func (r *reader) build(v *value) Job {
 	d := r.defaults(v)
 	r.linkage(v.get("linkage"), d, &j)
 	j.Frame = r.frame(v.get("frame"), d, &j)
+	r.tellNoStock(j.Stock)
 	j.Copies = r.copies(v.get("copies"))
 	j.Pins = r.pins(v.get("pins"), v.at, &j)
 	j.Spare = Spare{Percent: v.get("spare").get("percent").numberOr(0), Least: int(v.get("spare").get("least").numberOr(0))}

@@ -90,21 +90,29 @@ func pinKind(v *value) PinKind {
 // default are taken by pins of the default's own kind only: a medium bolt hole is no bearing seat.
 func (r *reader) pin(joint string, own, standard *value, links []string, at spot, j *Job) Pin {
 	where := "pin " + joint
+	whose := func(v *value) string { // errors in the default are told once, not for every joint
+		if v != nil && v.within(standard) {
+			return "pins default"
+		}
+		return where
+	}
 	p := Pin{Joint: joint, Kind: pinKind(own)}
 	if p.Kind == "" {
 		p.Kind = pinKind(standard)
 	}
 	for _, v := range []*value{own, standard} {
 		if v != nil && v.has("shaft") && (v.has("bolt") || v.has("bearing")) {
-			r.fail(v.at, "keep one of them", "%s: shaft excludes bolt and bearing", where)
+			r.fail(v.at, "keep one of them", "%s: shaft excludes bolt and bearing", whose(v))
 			return p
 		}
 		if v != nil && v.has("fit") && v.has("clearance") {
-			r.fail(v.get("clearance").at, "keep one of them", "%s: fit and clearance exclude each other", where)
+			r.fail(v.get("clearance").at, "keep one of them", "%s: fit and clearance exclude each other", whose(v))
 		}
 	}
 	if p.Kind == "" {
-		if own == nil || own.sound {
+		if own == nil {
+			r.fail(standard.at, pinAdvice, "pins default: neither bolt, bearing nor shaft is said")
+		} else {
 			r.fail(at, pinAdvice, "%s: neither bolt, bearing nor shaft is said", where)
 		}
 		return p
@@ -137,16 +145,16 @@ func (r *reader) pin(joint string, own, standard *value, links []string, at spot
 	switch p.Kind {
 	case ShaftPin:
 		p.Shaft = pick("shaft").numberOr(0)
-		p.Fit = r.shaftFit(fit, where, "running")
+		p.Fit = r.shaftFit(fit, whose(fit), "running")
 	case BearingPin:
 		p.Bearing = r.bearing(pick("bearing"))
-		p.Fit = r.shaftFit(fit, where, "press")
+		p.Fit = r.shaftFit(fit, whose(fit), "press")
 		p.Bolt = r.bearingBolt(own, standard, p.Bearing, where)
 		p.Seats = r.seats(own, links, joint, where, at, j)
 	default:
 		bolt := pick("bolt")
 		p.Bolt = r.bolt(bolt)
-		p.Fit = r.boltFit(fit, p.Bolt, where)
+		p.Fit = r.boltFit(fit, p.Bolt, whose(fit))
 	}
 	if p.Clearance != nil {
 		p.Fit = ""

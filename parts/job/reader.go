@@ -23,6 +23,8 @@ type reader struct {
 	noUnit  bool      // units is there but wrong: bare numbers are passed over
 	bare    [3][]unitless
 
+	noStock    []string // what has no stock
+	noStockAt  spot
 	planeSound map[string]bool          // links whose plane is known
 	groundAt   map[string]linkage.Point // where the ground pivots are
 }
@@ -72,7 +74,7 @@ func (r *reader) read(n *yaml.Node, f *form, path, what, where, advice string, k
 	if f.kind == anEither {
 		f = f.pick(n)
 		if f == nil {
-			r.fail(v.at, advice, "%s: %s is wanted", what, v.form.wanted())
+			r.fail(v.at, advice, "%s must be %s", what, v.form.wanted())
 			return v
 		}
 		v.form = f
@@ -93,7 +95,7 @@ func (r *reader) read(n *yaml.Node, f *form, path, what, where, advice string, k
 	if scalar && n.Kind != yaml.ScalarNode ||
 		(f.kind == aTable || f.kind == aNamed) && n.Kind != yaml.MappingNode ||
 		(f.kind == aList || f.kind == aPlace) && n.Kind != yaml.SequenceNode {
-		r.fail(v.at, advice, "%s: %s is wanted", what, f.wanted())
+		r.fail(v.at, advice, "%s must be %s", what, f.wanted())
 		return v
 	}
 	switch f.kind {
@@ -132,9 +134,10 @@ func (r *reader) tame(n *yaml.Node, at spot) bool {
 	return false
 }
 
-// pick chooses the variant for a node: by its kind, tables by the key that tells them apart.
+// pick chooses the variant for a node: by its kind, of tables the one that knows most of the keys.
 func (f *form) pick(n *yaml.Node) *form {
 	var last *form
+	most := -1
 	for i := range f.variants {
 		variant := &f.variants[i]
 		switch variant.kind {
@@ -142,9 +145,14 @@ func (f *form) pick(n *yaml.Node) *form {
 			if n.Kind != yaml.MappingNode {
 				continue
 			}
-			last = variant
-			if variant.when == "" || hasKey(n, variant.when) {
-				return variant
+			known := 0
+			for _, name := range variant.names() {
+				if hasKey(n, name) {
+					known++
+				}
+			}
+			if known > most {
+				last, most = variant, known
 			}
 		case aList, aPlace:
 			if n.Kind == yaml.SequenceNode {
@@ -197,14 +205,14 @@ func (r *reader) inBounds(number float64, f *form, what, advice string, at spot)
 		if number < 0 {
 			r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
 		} else {
-			r.fail(at, advice, "%s: %s is not more than zero", what, figureOf(number, f.dim))
+			r.fail(at, advice, "%s must be greater than zero", what)
 		}
 	case number < f.low-hair && f.low == 0:
 		r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
 	case number < f.low-hair:
-		r.fail(at, advice, "%s: %s is less than %s, the least that is taken for meant", what, figureOf(number, f.dim), figureOf(f.low, f.dim))
+		r.fail(at, advice, "%s: %s is too little; the least is %s", what, figureOf(number, f.dim), figureOf(f.low, f.dim))
 	case number > f.high+hair:
-		r.fail(at, advice, "%s: %s is more than %s, the most that is taken for meant", what, figureOf(number, f.dim), figureOf(f.high, f.dim))
+		r.fail(at, advice, "%s: %s is too much to be meant; the most is %s", what, figureOf(number, f.dim), figureOf(f.high, f.dim))
 	default:
 		return true
 	}
@@ -279,7 +287,7 @@ func (r *reader) word(word string, f *form, v *value, what, advice string) {
 
 func (r *reader) place(n *yaml.Node, f *form, v *value, what string) {
 	if len(n.Content) != 2 {
-		r.fail(v.at, "write [x, y]", "%s: a place has two coordinates, here are %d", what, len(n.Content))
+		r.fail(v.at, "write [x, y]", "%s: a place has two coordinates, not %d", what, len(n.Content))
 		return
 	}
 	coordinate := form{kind: aQuantity, dim: length, low: f.low, high: f.high}
@@ -288,15 +296,23 @@ func (r *reader) place(n *yaml.Node, f *form, v *value, what string) {
 	v.x, v.y, v.sound = x.number, y.number, x.sound && y.sound
 }
 
+// mostEntries is how many joints, links, copies or entries of a list are taken: far more than is
+// built, few enough that comparing each with each takes no time.
+const mostEntries = 1000
+
 func (r *reader) list(n *yaml.Node, f *form, v *value, what, where string) {
-	if len(n.Content) < f.least || f.most > 0 && len(n.Content) > f.most {
+	most := f.most
+	if most == 0 {
+		most = mostEntries
+	}
+	if len(n.Content) < f.least || len(n.Content) > most {
 		switch {
 		case len(n.Content) == 0:
 			r.fail(v.at, "leave the key out, or put something in", "%s: the list is empty", what)
 		case f.least == f.most:
-			r.fail(v.at, "", "%s: %d values are wanted, here are %d", what, f.least, len(n.Content))
+			r.fail(v.at, "", "%s: %d values are wanted, not %d", what, f.least, len(n.Content))
 		default:
-			r.fail(v.at, "", "%s: at most %d entries are taken, here are %d", what, f.most, len(n.Content))
+			r.fail(v.at, "", "%s: at most %d entries are taken, not %d", what, most, len(n.Content))
 		}
 		return
 	}
@@ -306,7 +322,7 @@ func (r *reader) list(n *yaml.Node, f *form, v *value, what, where string) {
 		if f.item.noun != "" {
 			inside = fmt.Sprintf("%s %d", f.item.noun, i+1)
 		}
-		item := r.read(c, f.item, v.path+"."+strconv.Itoa(i), what, inside, "", r.spotOf(c))
+		item := r.read(c, f.item, v.path+"."+strconv.Itoa(i), "an entry of "+what, inside, "", r.spotOf(c))
 		v.items = append(v.items, item)
 	}
 }
@@ -322,6 +338,7 @@ func (r *reader) table(n *yaml.Node, f *form, v *value, where string, keyAt spot
 	for i := 0; i+1 < len(n.Content); i += 2 {
 		k, at := n.Content[i], r.spotOf(n.Content[i])
 		if !r.plainKey(k, at) {
+			v.torn = true
 			continue
 		}
 		name := k.Value
@@ -343,7 +360,7 @@ func (r *reader) table(n *yaml.Node, f *form, v *value, where string, keyAt spot
 		v.entries = append(v.entries, e)
 	}
 	for i := range f.keys {
-		if f.keys[i].need && !v.has(f.keys[i].name) {
+		if f.keys[i].need && !v.has(f.keys[i].name) && !v.torn {
 			r.fail(keyAt, f.keys[i].advice, "%s has no %s", where, f.keys[i].name)
 		}
 	}
@@ -366,7 +383,7 @@ func (r *reader) table(n *yaml.Node, f *form, v *value, where string, keyAt spot
 }
 
 func childWhere(spec *key, where string) string {
-	if spec.form.kind == aTable && spec.form.noun != "" && where != "" && where != "the job" {
+	if spec.form.kind == aTable && spec.form.noun != "" && where != "" && where != jobForm.noun {
 		return spec.name + " of " + where
 	}
 	return ""
@@ -434,6 +451,10 @@ func (r *reader) unknownKey(name string, f *form, where string, at spot, n, besi
 func (r *reader) named(n *yaml.Node, f *form, v *value, what string) {
 	if len(n.Content) == 0 {
 		r.fail(v.at, "leave the key out, or put something in", "%s is empty", what)
+		return
+	}
+	if len(n.Content)/2 > mostEntries {
+		r.fail(v.at, "is it the right file?", "%s: at most %d entries are taken, not %d", what, mostEntries, len(n.Content)/2)
 		return
 	}
 	first := map[string]spot{}

@@ -88,7 +88,22 @@ func (r *reader) stockName(v *value, where string, at spot, d defaults, stock []
 		return r.known(v, stockNames(stock), "stock", where)
 	}
 	if !d.stockAsked && len(stock) > 0 {
-		r.fail(at, "say stock: "+stock[0].Name+" there, or defaults: {stock: "+stock[0].Name+"} for all", "%s has no stock", where)
+		r.noStock = append(r.noStock, where)
+		if len(r.noStock) == 1 {
+			r.noStockAt = at
+		}
 	}
 	return d.stock
+}
+
+// tellNoStock reports, once, what has no stock.
+func (r *reader) tellNoStock(stock []Stock) {
+	if len(r.noStock) == 0 {
+		return
+	}
+	verb := "have"
+	if len(r.noStock) == 1 {
+		verb = "has"
+	}
+	r.fail(r.noStockAt, "write defaults: {stock: "+stock[0].Name+"}, or stock: "+stock[0].Name+" there", "%s %s no stock", allOf(r.noStock), verb)
 }

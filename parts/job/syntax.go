@@ -84,10 +84,13 @@ func explain(s *source, cause error) Error {
 	if tab := strings.IndexByte(indent, '\t'); tab >= 0 {
 		return fault(s.at(line, tab+1, 1), "a tab in the indentation", "indent with spaces: YAML takes no tabs there")
 	}
+	if m := tightColon.FindStringSubmatchIndex(text); m != nil {
+		return fault(s.at(line, m[2]+1, 1), "a colon without a space after it", "write "+short(text[m[0]:m[2]]+": "+text[m[3]:]))
+	}
 	switch {
 	case strings.Contains(message, "mapping values are not allowed"):
 		if m := secondColon.FindStringSubmatchIndex(text); m != nil {
-			return fault(s.at(line, m[2]+1, 1), "a second colon on the line", "put braces round keys that stand on one line, {key: value}, or quotes round text with a colon in it")
+			return fault(s.at(line, m[2]+1, 1), "a second colon on the line", "put quotes round text with a colon in it, or braces round keys that stand on one line, {key: value}")
 		}
 		return fault(at, "this key does not fit the lines above it", "indent it as its neighbours are, and see that the line above is complete")
 	case strings.Contains(message, "could not find expected ':'"):
@@ -100,18 +103,26 @@ func explain(s *source, cause error) Error {
 		strings.Contains(message, "block sequence entries are not allowed"):
 		return fault(at, "this line does not fit the lines above it", "give keys (or dashes) that belong together the same indentation, and see that the line above is complete")
 	case strings.Contains(message, "unknown anchor"):
+		if i := strings.IndexByte(text, '*'); i >= 0 {
+			at = s.at(line, i+1, 1)
+		}
 		return fault(at, "a name after * that is nowhere defined", "write the value out: the job file has no anchors and aliases")
 	case strings.Contains(message, "exceeded max depth"):
 		return fault(at, "nested too deeply", "is it the right file?")
 	case strings.Contains(message, "did not find expected ',' or"):
+		if m := missingComma.FindStringSubmatchIndex(text); m != nil {
+			at = s.at(line, m[2]+1, m[3]-m[2])
+		}
 		return fault(at, "a comma is missing between two entries in brackets", "write [a, b] and {key: value, key: value}")
 	}
 	return fault(at, "not understood as YAML ("+message+")", "look at this line's indentation, colons and brackets")
 }
 
 var (
-	linePrefix  = regexp.MustCompile(`^line [0-9]+: `)
-	secondColon = regexp.MustCompile(`:\s[^#"']*?(:)(?:\s|$)`)
+	linePrefix   = regexp.MustCompile(`^line [0-9]+: `)
+	secondColon  = regexp.MustCompile(`:\s[^#"']*?(:)(?:\s|$)`)
+	tightColon   = regexp.MustCompile(`[A-Za-z_][A-Za-z0-9_-]*(:)[A-Za-z0-9_{\["'.]`)
+	missingComma = regexp.MustCompile(`:\s+[^,\[\]{}:#]*\s([A-Za-z][A-Za-z0-9_-]*):\s`)
 )
 
 // balance is what follow finds: the first bracket or quote without its match, and the lines at whose
@@ -134,6 +145,7 @@ func follow(s *source) balance {
 	quote := byte(0)
 	var quoteAt spot
 	blockIndent := -1 // indentation of the line that opened a block text
+	comment := spot{} // the last comment that began inside brackets
 	refuse := func(at spot, message, hint string) balance {
 		return balance{fault: &Error{at.Position, at.span, s.line(at.Line), message, hint}}
 	}
@@ -163,6 +175,9 @@ func follow(s *source) balance {
 			}
 			switch {
 			case c == '#' && spaced:
+				if len(stack) > 0 {
+					comment = s.at(n+1, i+1, 1)
+				}
 				i = len(text)
 			case c == ' ' || c == '\t':
 			case (c == '"' || c == '\'') && fresh:
@@ -202,6 +217,9 @@ func follow(s *source) balance {
 	}
 	if len(stack) > 0 {
 		top := stack[len(stack)-1]
+		if comment.Line == top.at.Line {
+			return refuse(comment, fmt.Sprintf("everything after this # is a comment, so the %c before it is never closed", top.char), `if the # belongs to the value, put it in quotes: "#8"`)
+		}
 		return refuse(top.at, fmt.Sprintf("this %c is never closed", top.char), fmt.Sprintf("close it with %c", map[byte]rune{'[': ']', '{': '}'}[top.char]))
 	}
 	return out

@@ -1,5 +1,7 @@
 package job
 
+import "strings"
+
 // value is what was read at one place of the job file, checked against its form. All methods take a
 // nil value as "not given" and a value that is not sound (an error was reported) likewise, so that
 // one mistake is told once.
@@ -14,6 +16,7 @@ type value struct {
 	entries []entry // aTable, aNamed: in the order of the file
 	items   []*value
 	sound   bool
+	torn    bool // aTable: keys are hidden in something that was refused, so none counts as missing
 }
 
 // entry is a key or a name with its value.
@@ -68,4 +71,9 @@ func (v *value) all() []entry {
 		return nil
 	}
 	return v.entries
+}
+
+// within tells whether the value stands in another, or is it.
+func (v *value) within(other *value) bool {
+	return other != nil && (v.path == other.path || strings.HasPrefix(v.path, other.path+"."))
 }
