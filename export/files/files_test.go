@@ -23,7 +23,7 @@ func set(data string, names ...string) []File {
 		s = append(s, File{Name: n, Data: []byte(data + " " + n)})
 		listed = append(listed, fmt.Sprintf(`{"name": %q}`, n))
 	}
-	m := `{"program": "pinwright", "data": "` + data + `", "files": [` + strings.Join(listed, ", ") + `]}`
+	m := `{"program": "pinwright 0.1", "data": "` + data + `", "files": [` + strings.Join(listed, ", ") + `]}`
 	// The manifest in front, to see that it is written last all the same.
 	return append([]File{{Name: Manifest, Data: []byte(m)}}, s...)
 }

@@ -9,8 +9,8 @@ import (
 	"strings"
 )
 
-// Listed reads the names of the files from a manifest: a JSON object with "program": "pinwright" and
-// "files": [{"name": "clear3-1.dxf", ...}, ...]. Anything else in it is not looked at.
+// Listed reads the names of the files from a manifest: a JSON object with "program": "pinwright 0.1.0"
+// (of any version) and "files": [{"name": "clear3-1.dxf"}, ...]. Nothing else in it is looked at.
 func Listed(manifest []byte) ([]string, error) {
 	var m struct {
 		Program string `json:"program"`
@@ -21,7 +21,7 @@ func Listed(manifest []byte) ([]string, error) {
 	if err := json.Unmarshal(manifest, &m); err != nil {
 		return nil, fmt.Errorf("not a manifest: %w", err)
 	}
-	if m.Program != "pinwright" {
+	if name, _, _ := strings.Cut(m.Program, " "); name != "pinwright" {
 		return nil, errors.New("not a manifest of Pinwright")
 	}
 	names := make([]string, len(m.Files))
