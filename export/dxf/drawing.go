@@ -1,7 +1,6 @@
 package dxf
 
 import (
-	"math"
 	"strconv"
 
 	"pinwright/parts/outline"
@@ -54,35 +53,3 @@ type Error struct {
 
 // Error says the line and what is wrong there.
 func (e *Error) Error() string { return "line " + strconv.Itoa(e.Line) + ": " + e.What }
-
-func emptyBox() outline.Box {
-	return outline.Box{
-		Min: outline.Point{X: math.Inf(1), Y: math.Inf(1)},
-		Max: outline.Point{X: math.Inf(-1), Y: math.Inf(-1)},
-	}
-}
-
-// arcPath is a circular arc from angle start counter-clockwise to end (radians, start < end), as
-// one or two segments so that no bulge grows beyond 1.
-func arcPath(centre outline.Point, radius, start, end float64) outline.Path {
-	at := func(angle float64) outline.Point {
-		s, c := math.Sincos(angle)
-		return outline.Point{X: centre.X + radius*c, Y: centre.Y + radius*s}
-	}
-	sweep := end - start
-	if sweep <= math.Pi {
-		return outline.Path{{Point: at(start), Bulge: math.Tan(sweep / 4)}, {Point: at(end)}}
-	}
-	bulge := math.Tan(sweep / 8)
-	return outline.Path{
-		{Point: at(start), Bulge: bulge}, {Point: at(start + sweep/2), Bulge: bulge}, {Point: at(end)},
-	}
-}
-
-// circle is a full circle, counter-clockwise.
-func circle(d outline.Disc) outline.Outline {
-	return outline.Outline{
-		{Point: outline.Point{X: d.Centre.X - d.Radius, Y: d.Centre.Y}, Bulge: 1},
-		{Point: outline.Point{X: d.Centre.X + d.Radius, Y: d.Centre.Y}, Bulge: 1},
-	}
-}

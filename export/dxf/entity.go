@@ -342,7 +342,7 @@ func (s *scanner) contour(e *raw) (Entity, error) {
 		}
 		disc := outline.Disc{Centre: centre, Radius: e.have[40]}
 		out.Circle = &disc
-		out.Closed = circle(disc)
+		out.Closed = outline.Circle(disc.Centre, disc.Radius)
 	case "ARC":
 		if err := s.need(e, 10, 20, 40, 50, 51); err != nil {
 			return out, err
@@ -356,7 +356,7 @@ func (s *scanner) contour(e *raw) (Entity, error) {
 			sweep += 360
 		}
 		const degree = math.Pi / 180
-		out.Open = arcPath(centre, e.have[40], start*degree, (start+sweep)*degree)
+		out.Open = outline.Arc(centre, e.have[40], start*degree, (start+sweep)*degree)
 	default:
 		if e.open {
 			return out, s.fail(e.line, "the last vertex of the %s has no y", e.kind)

@@ -153,9 +153,9 @@ func agree(t *testing.T, steps []export.Step, seen []ezEntity) {
 		if step.Op != export.Engrave {
 			vertices, closed = step.Closed, true
 		}
-		if disc, ok := outline.AsCircle(step.Closed); ok {
-			if e.Type != "CIRCLE" || e.Points[0] != [2]float64{disc.Centre.X, disc.Centre.Y} || e.Radius != disc.Radius {
-				t.Errorf("entity %d: %+v, want %+v", i, e, disc)
+		if centre, radius, ok := step.Closed.AsCircle(); ok {
+			if e.Type != "CIRCLE" || e.Points[0] != [2]float64{centre.X, centre.Y} || e.Radius != radius {
+				t.Errorf("entity %d: %+v, want %v, %v", i, e, centre, radius)
 			}
 			continue
 		}

@@ -4,6 +4,8 @@ import (
 	"io"
 	"slices"
 	"strings"
+
+	"pinwright/parts/outline"
 )
 
 // Read reads an ASCII drawing of any version from R12 on.
@@ -22,7 +24,7 @@ func Read(r io.Reader) (Drawing, error) {
 	if err != nil {
 		return Drawing{}, err
 	}
-	d := Drawing{Extents: emptyBox(), Limits: emptyBox()}
+	d := Drawing{Extents: outline.EmptyBox(), Limits: outline.EmptyBox()}
 	var seen []string
 	for {
 		p, err := s.next()

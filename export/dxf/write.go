@@ -10,37 +10,28 @@ import (
 
 // Write writes a sheet as a complete drawing, the entities in the order of its steps.
 //
-// Cuts must be closed outlines, engraving open paths of two or more vertices; anything else, a size
-// or coordinate that is not a number or beyond a kilometre, and a colour outside 1 to 255 is an
-// error, and then nothing is written. $EXTMIN and $EXTMAX are the exact bounds of what is drawn, or
+// A sheet that fails its Check, and a colour outside 1 to 255, is an error, and then nothing is written. $EXTMIN and $EXTMAX are the exact bounds of what is drawn, or
 // of the sheet when nothing is.
 func Write(w io.Writer, s export.Sheet, opt Options) error {
 	layers, err := layersOf(opt)
 	if err != nil {
 		return fmt.Errorf("drawing %s: %w", s.Name, err)
 	}
-	if !(s.Width > 0 && s.Height > 0) {
-		return fmt.Errorf("drawing %s: a sheet of %g x %g mm has no area", s.Name, s.Width, s.Height)
+	if err := s.Check(); err != nil {
+		return err
 	}
 
-	edge := outline.Outline{
-		{Point: outline.Point{X: 0, Y: 0}}, {Point: outline.Point{X: s.Width, Y: 0}},
-		{Point: outline.Point{X: s.Width, Y: s.Height}}, {Point: outline.Point{X: 0, Y: s.Height}},
-	}
+	edge := outline.Rectangle(outline.Point{}, outline.Point{X: s.Width, Y: s.Height})
 	var body tags
-	box := emptyBox()
+	box := outline.EmptyBox()
 	handle := hFirstEntity
 	if opt.SheetEdge {
 		body.polyline(handle, LayerEdge, edge, true)
 		handle++
 		box = edge.Bounds()
 	}
-	for i, step := range s.Steps {
-		drawn, err := body.step(handle, step)
-		if err != nil {
-			return fmt.Errorf("drawing %s: step %d (%s): %w", s.Name, i+1, step.Part, err)
-		}
-		box = box.Union(drawn)
+	for _, step := range s.Steps {
+		box = box.Union(body.step(handle, step))
 		handle++
 	}
 	if box.Empty() {
@@ -72,30 +63,20 @@ func Write(w io.Writer, s export.Sheet, opt Options) error {
 }
 
 // step writes the entity of one step and returns its bounds.
-func (t *tags) step(handle int, s export.Step) (outline.Box, error) {
+func (t *tags) step(handle int, s export.Step) outline.Box {
 	name := LayerOf(s.Op)
-	switch {
-	case name == "":
-		return outline.Box{}, fmt.Errorf("operation %d does not exist", s.Op)
-	case s.Op == export.Engrave:
-		if len(s.Closed) > 0 || len(s.Open) < 2 {
-			return outline.Box{}, fmt.Errorf("engraving is an open path of two or more points; this one has %d, and an outline of %d",
-				len(s.Open), len(s.Closed))
-		}
+	if s.Op == export.Engrave {
 		t.stroke(handle, name, s.Open)
-		return s.Open.Bounds(), nil
-	case len(s.Open) > 0 || len(s.Closed) < 2:
-		return outline.Box{}, fmt.Errorf("a cut is a closed outline of two or more points; this one has %d, and an open path of %d",
-			len(s.Closed), len(s.Open))
+		return s.Open.Bounds()
 	}
-	if disc, ok := outline.AsCircle(s.Closed); ok {
+	if centre, radius, ok := s.Closed.AsCircle(); ok {
 		t.entity("CIRCLE", handle, name, "AcDbCircle")
-		t.point3(10, disc.Centre.X, disc.Centre.Y, 0)
-		t.num(40, disc.Radius)
+		t.point3(10, centre.X, centre.Y, 0)
+		t.num(40, radius)
 	} else {
 		t.polyline(handle, name, s.Closed, true)
 	}
-	return s.Closed.Bounds(), nil
+	return s.Closed.Bounds()
 }
 
 // stroke writes an open path: a LINE when it is one, else a polyline.

