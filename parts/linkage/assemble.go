@@ -29,9 +29,10 @@ type assembly struct {
 
 // miss of a search that found nothing: the joint that came nearest to closing.
 type shortfall struct {
-	step  planStep
-	short float64
-	deep  int
+	step   planStep
+	short  float64
+	deep   int
+	reason string
 }
 
 // assemble finds the assemblies at the drive angle: all combinations of mirrored shapes (those that
@@ -147,7 +148,7 @@ func (s *search) from(k int, f *frame) {
 			g.copyFrom(f)
 			g.signs[st.index] = sign
 			if !g.meet(&st.dyad, st.index) {
-				s.short(k, dyadShort(g.p, st.dyad))
+				s.short(k, dyadShort(g.p, st.dyad), g)
 				return
 			}
 			s.from(k+1, g)
@@ -170,9 +171,9 @@ func (s *search) from(k int, f *frame) {
 	}
 }
 
-func (s *search) short(k int, mm float64) {
+func (s *search) short(k int, mm float64, f *frame) {
 	if k > s.fall.deep || k == s.fall.deep && mm < s.fall.short {
-		*s.fall = shortfall{s.m.plan[k], mm, k}
+		*s.fall = shortfall{s.m.plan[k], mm, k, s.m.reason(s.pr, k, f)}
 	}
 }
 
@@ -266,7 +267,7 @@ func (s *search) blockSolutions(k int, f *frame) [][]Point {
 		}
 	}
 	if len(out) == 0 {
-		s.short(k, best)
+		s.short(k, best, f)
 	}
 	return out
 }

@@ -194,7 +194,7 @@ func (m *Mechanism) putTogether() error {
 	from, to := m.span()
 	all, fall := m.assemble(from, m.setPlaces(), maxAssemblies)
 	if len(all) == 0 {
-		e := &LoopError{Angle: from, Short: fall.short, ShortAt: from, Ranges: m.closingRanges(nil)}
+		e := &LoopError{Angle: from, Short: fall.short, ShortAt: from, Reason: fall.reason, Ranges: m.closingRanges(nil)}
 		m.blame(e, fall.step)
 		return e
 	}

@@ -25,10 +25,8 @@ func (m *Mechanism) loopError(pr *program, start *frame, w *walker, s stop, sett
 			e.Short, e.ShortAt = short, angle
 		}
 	}
-	if s.dyad >= 0 {
-		if pr.upTo(s.step, f, e.ShortAt) {
-			e.Reason = m.reason(pr, s.step, f)
-		}
+	if pr.upTo(s.step, f, e.ShortAt) {
+		e.Reason = m.reason(pr, s.step, f)
 	}
 	// The range that closes about the start: what was walked, and for a full turn what lies before.
 	r := Span{math.Min(from, s.angle), math.Max(from, s.angle)}
@@ -66,11 +64,16 @@ func (pr *program) upTo(step int, f *frame, angle float64) bool {
 
 // reason gives the figures of a dyad that does not close.
 func (m *Mechanism) reason(pr *program, step int, f *frame) string {
+	if pr.steps[step].kind != dyadStep {
+		return ""
+	}
 	d := pr.steps[step].dyad
 	span := dist(f.p[d.a], f.p[d.b])
 	names := m.linkNames(m.plan[step].links)
 	a, b := m.jointNames[d.a], m.jointNames[d.b]
 	switch {
+	case span < 1e-6*(d.ra+d.rb) && math.Abs(d.ra-d.rb) <= 1e-6*(d.ra+d.rb):
+		return fmt.Sprintf("%s and %s come together there, so that %s may swing about them", a, b, m.jointNames[d.j])
 	case span > d.ra+d.rb:
 		return fmt.Sprintf("%s and %s are %s apart there, %s and %s reach %s", a, b, millimetres(span), names[0], names[1], millimetres(d.ra+d.rb))
 	case span < math.Abs(d.ra-d.rb):

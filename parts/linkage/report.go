@@ -245,7 +245,7 @@ func (m *Mechanism) checkRange(j, n int) error {
 			}
 			mid := (good + bad) / 2
 			if _, err := margin(mid); err != nil {
-				bad, failed = mid, err
+				bad = mid // the cause stays the one further out, where the figures are larger
 			} else {
 				good = mid
 			}

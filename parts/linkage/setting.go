@@ -52,7 +52,7 @@ func (m *Mechanism) startAt(pr *program, setting Setting) (*frame, error) {
 				continue
 			}
 			from, _ := m.span()
-			e := &LoopError{Angle: from, ShortAt: from, Setting: setting, Short: pr.shortOf(at, g), Ranges: m.closingRanges(setting)}
+			e := &LoopError{Angle: from, ShortAt: from, Setting: setting, Short: pr.shortOf(at, g), Reason: m.reason(pr, at, g), Ranges: m.closingRanges(setting)}
 			m.blame(e, m.plan[at])
 			return nil, e
 		}

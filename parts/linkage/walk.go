@@ -10,6 +10,8 @@ const (
 	// shortestStep is where halving ends: what is not told apart there (a flip from a near miss)
 	// differs by less than a ten-thousandth of a millimetre on a 100 mm link.
 	shortestStep = 2.0e-7
+	// closeToFlat is the last step before a frame in which a dyad lies in line.
+	closeToFlat = 1e-5
 )
 
 // walker follows one assembly along the drive:
@@ -19,7 +21,7 @@ const (
 //  2. The step is certain when no dyad's gap (squared distance of its joint from the line of its
 //     pivots) can have reached zero on the way: it falls at one end and rises at the other only
 //     when the tangents at the ends meet above zero (the gap is convex near its valley, so it lies
-//     above its tangents); and when each block's Jacobian keeps the sign of its determinant and its
+//     above its tangents) and its pivots did not pass through each other; and when each block's Jacobian keeps the sign of its determinant and its
 //     joints went as far as their speeds at both ends say.
 //  3. A step that is not certain is halved. At the shortest step a dyad's gap does reach zero: the
 //     links pass through being in line and the joint goes on to the other side, as it does without
@@ -137,7 +139,7 @@ func (w *walker) try(angle float64) (v verdict, at int) {
 			if !g.meet(&s.dyad, i) {
 				return open, k
 			}
-			if doubt == sure && !f.flat[i] && !g.flat[i] && !clear0(f.gap[i], f.slope[i]*delta, g.gap[i], g.slope[i]*delta) {
+			if doubt == sure && !certain(&s.dyad, i, f, g, delta) {
 				doubt, doubtAt = unsure, k
 			}
 		case blockStep:
@@ -147,6 +149,21 @@ func (w *walker) try(angle float64) (v verdict, at int) {
 		}
 	}
 	return doubt, doubtAt
+}
+
+// certain reports whether a dyad surely keeps its side between two frames: its links were not in line
+// in between, and its pivots did not pass through each other (which turns the side about).
+func certain(d *dyad, i int, f, g *frame, delta float64) bool {
+	a, b := f.p[d.a], f.p[d.b]
+	c, e := g.p[d.a], g.p[d.b]
+	if (b.X-a.X)*(e.X-c.X)+(b.Y-a.Y)*(e.Y-c.Y) <= 0 {
+		return false
+	}
+	if g.flat[i] {
+		// The speed in line is taken from the frame before: come close to it first.
+		return f.flat[i] || math.Abs(delta) <= closeToFlat
+	}
+	return f.flat[i] || clear0(f.gap[i], f.slope[i]*delta, g.gap[i], g.slope[i]*delta)
 }
 
 // clear0 reports whether a quantity that goes from g0 to g1 with slopes d0 and d1 over a step stays
@@ -190,9 +207,11 @@ func (w *walker) flip(angle float64) (verdict, int) {
 	pr, f, g := w.pr, w.cur, w.next
 	delta := angle - f.angle
 	changed := false
-	for i := range w.flips {
-		w.flips[i] = !f.flat[i] && !g.flat[i] && !clear0(f.gap[i], f.slope[i]*delta, g.gap[i], g.slope[i]*delta)
-		changed = changed || w.flips[i]
+	for k := range pr.steps {
+		if s := &pr.steps[k]; s.kind == dyadStep {
+			w.flips[s.index] = !certain(&s.dyad, s.index, f, g, delta)
+			changed = changed || w.flips[s.index]
+		}
 	}
 	if !changed {
 		return sure, 0
