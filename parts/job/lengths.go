@@ -310,12 +310,11 @@ func (g *pebbles) walk(at int, seen []bool) bool {
 			continue
 		}
 		seen[next] = true
-		if g.free[next] > 0 {
-			g.free[next]--
-		} else if !g.walk(next, seen) {
+		if g.free[next] == 0 && !g.walk(next, seen) {
 			continue
 		}
 		// The distance turns round: its pebble comes from the other end now.
+		g.free[next]--
 		g.to[at] = slices.Delete(g.to[at], i, i+1)
 		g.to[next] = append(g.to[next], at)
 		g.free[at]++

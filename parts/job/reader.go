@@ -134,10 +134,11 @@ func (r *reader) tame(n *yaml.Node, at spot) bool {
 	return false
 }
 
-// pick chooses the variant for a node: by its kind, of tables the one that knows most of the keys.
+// pick chooses the variant for a node: by its kind, of tables the one whose keys
+// are there most nearly (each that is there counts for it, each that is not against it).
 func (f *form) pick(n *yaml.Node) *form {
 	var last *form
-	most := -1
+	most := 0
 	for i := range f.variants {
 		variant := &f.variants[i]
 		switch variant.kind {
@@ -151,8 +152,8 @@ func (f *form) pick(n *yaml.Node) *form {
 					known++
 				}
 			}
-			if known > most {
-				last, most = variant, known
+			if score := 2*known - len(variant.keys); last == nil || score > most {
+				last, most = variant, score
 			}
 		case aList, aPlace:
 			if n.Kind == yaml.SequenceNode {
@@ -261,7 +262,9 @@ func (r *reader) word(word string, f *form, v *value, what, advice string) {
 			}
 		}
 		hint := meant(word, f.words)
-		if hint == "" {
+		if unit := unitSlips[word]; contains(f.words, unit) {
+			hint = "write " + unit
+		} else if hint == "" {
 			hint = "write " + oneOf(f.words)
 		}
 		r.fail(v.at, hint, "%s: unknown %s", what, short(word))
