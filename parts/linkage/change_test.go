@@ -26,7 +26,7 @@ func TestParallelogram(t *testing.T) {
 			if d := dist(b, Point{X: a.X + 60, Y: a.Y}); d > 1e-6 { // 1e-6 at the flat position itself, where a side step costs nothing in length
 				t.Fatalf("%d steps: at %g deg the platform is %g mm off being level", steps, deg(p.Angle), d)
 			}
-			if d := dist(p.Speeds[3], p.Speeds[4]); d > 1e-4 {
+			if d := dist(p.Speeds[3], p.Speeds[4]); d > 1e-3 { // in line itself the speed is that of 1e-5 radians before
 				t.Fatalf("%d steps: at %g deg the speeds differ by %g", steps, deg(p.Angle), d)
 			}
 		}

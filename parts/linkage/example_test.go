@@ -50,8 +50,10 @@ func Example() {
 func ExampleCycle_Placement() {
 	l := linkage.Linkage{
 		Joints: []linkage.Joint{
-			{Name: "O", Ground: &linkage.Ground{}}, {Name: "D", Ground: &linkage.Ground{At: linkage.Point{X: 100}}},
-			{Name: "A"}, {Name: "B", Near: &linkage.Point{X: 137, Y: 71}},
+			{Name: "O", Ground: &linkage.Ground{}},
+			{Name: "D", Ground: &linkage.Ground{At: linkage.Point{X: 100}}},
+			{Name: "A"},
+			{Name: "B", Near: &linkage.Point{X: 137, Y: 71}},
 		},
 		Links: []linkage.Link{rod("crank", "O", "A", 40), rod("coupler", "A", "B", 120), rod("rocker", "D", "B", 80)},
 		Drive: linkage.Drive{Link: "crank", To: 2 * math.Pi, Full: true},

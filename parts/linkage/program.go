@@ -6,15 +6,14 @@ import "math"
 // the ones before it by arithmetic. It is read only, except for the scratch inside its blocks: clone
 // gives each walker its own.
 type program struct {
-	joints       int
-	pivot, tip   int     // the drive link's ground pin and next pin
-	reach        float64 // between them, mm
-	ground       []int
-	steps        []progStep
-	dyads        int
-	blocks       int
-	size         float64 // the longest length, mm
-	groundPlaces []Point // by joint
+	joints     int
+	pivot, tip int     // the drive link's ground pin and next pin
+	reach      float64 // between them, mm
+	ground     []int
+	steps      []progStep
+	dyads      int
+	blocks     int
+	size       float64 // the longest length, mm
 }
 
 type progStep struct {

@@ -65,7 +65,12 @@ type SettingReport struct {
 func Analyse(l Linkage, o Options) (Report, error) {
 	m, err := New(l)
 	if err != nil {
-		return Report{Gruebler: gruebler(l)}, err
+		r := Report{Gruebler: gruebler(l)}
+		var free *MobilityError
+		if errors.As(err, &free) {
+			r.Mobility = free.Mobility
+		}
+		return r, err
 	}
 	return m.Analyse(o)
 }

@@ -120,7 +120,7 @@ func placingOrder(d [][]float64) (order []int, stuck int) {
 
 // placePin returns the one or two places of a pin from its lengths to pins that are placed.
 func placePin(pts []Point, placed []int, pin int, d [][]float64, name func(i, j int) string) ([]Point, error) {
-	var a, b, span = -1, -1, -1.0
+	a, b, span := -1, -1, -1.0
 	for i, m := range placed {
 		for _, o := range placed[:i] {
 			if d[pin][m] > 0 && d[pin][o] > 0 && dist(pts[m], pts[o]) > span {
