@@ -275,3 +275,37 @@ func BenchmarkEightBarLeg(b *testing.B) {
 	}
 	b.ReportMetric(float64(b.N*steps)/b.Elapsed().Seconds(), "steps/s")
 }
+
+// TestKlann draws the leg with circles, independent of the solver's plan: pair by pair of two known
+// points and two lengths, the side as at the start.
+func TestKlann(t *testing.T) {
+	l, _ := load(t, "klann.json")
+	c := cycleOf(t, l, 120)
+	if !c.Full || len(c.m.Groups()) != 3 {
+		t.Errorf("groups %+v, want the crank and two dyads", c.m.Groups())
+	}
+	const O, L, U, M, C, D, E, F = 0, 1, 2, 3, 4, 5, 6, 7
+	s := c.Positions[0].Places
+	draw := func(a, b Point, ra, rb, side float64) Point {
+		n := dist(a, b)
+		cos := (ra*ra + n*n - rb*rb) / (2 * ra * n)
+		th := math.Atan2(b.Y-a.Y, b.X-a.X) + math.Copysign(math.Acos(cos), side)
+		return Point{X: a.X + ra*math.Cos(th), Y: a.Y + ra*math.Sin(th)}
+	}
+	side := func(a, b, p int) float64 { return cross(sub(s[b], s[a]), sub(s[p], s[a])) }
+	for _, p := range c.Positions {
+		m := Point{X: 26.8 * math.Cos(p.Angle), Y: 26.8 * math.Sin(p.Angle)}
+		cc := draw(m, s[L], 68.2, 49, side(M, L, C))
+		d := draw(m, cc, 128.8, 62.4, side(M, C, D))
+		e := draw(d, s[U], 48.1, 98.6, side(D, U, E))
+		f := draw(d, e, 235.6, 188.7, side(D, E, F))
+		for j, want := range map[int]Point{M: m, C: cc, D: d, E: e, F: f} {
+			if x := dist(p.Places[j], want); x > 1e-9 {
+				t.Fatalf("at %g deg joint %s is %g mm off the drawing", deg(p.Angle), c.m.jointNames[j], x)
+			}
+		}
+	}
+	if s[O] != (Point{}) {
+		t.Error("the crank's pivot moved")
+	}
+}
