@@ -88,10 +88,10 @@ func (f *face) show(s string) string {
 	return b.String()
 }
 
-// embed adds the font to the document, cut down to the glyphs that are used: a composite font whose
+// embed fills object at with the font, cut down to the glyphs that are used: a composite font whose
 // character codes are the glyph numbers, with a map back to Unicode so that text can be searched
 // and copied (ISO 32000-1, 9.7 and 9.10.3).
-func (f *face) embed(d *document) (ref, error) {
+func (f *face) embed(d *document, at ref) error {
 	glyphs := make([]sfnt.GlyphIndex, 0, len(f.used))
 	for g := range f.used {
 		glyphs = append(glyphs, g)
@@ -99,13 +99,13 @@ func (f *face) embed(d *document) (ref, error) {
 	sort.Slice(glyphs, func(i, j int) bool { return glyphs[i] < glyphs[j] })
 	data, head, err := subset(f.data, glyphs)
 	if err != nil {
-		return 0, fmt.Errorf("font %s: %w", f.name, err)
+		return fmt.Errorf("font %s: %w", f.name, err)
 	}
 	file := d.stream(fmt.Sprintf("/Length1 %d", len(data)), data)
 	scale := 1000 / float64(f.font.UnitsPerEm())
 	metrics, err := f.font.Metrics(&f.buf, fixed.I(1000), font.HintingNone)
 	if err != nil {
-		return 0, fmt.Errorf("font %s: %w", f.name, err)
+		return fmt.Errorf("font %s: %w", f.name, err)
 	}
 	name := "/PINWRT+" + f.name // six letters and a plus mark a font of which a part is embedded
 	box := fmt.Sprintf("[%s %s %s %s]", num(float64(head.xMin)*scale, 0), num(float64(head.yMin)*scale, 0),
@@ -119,8 +119,9 @@ func (f *face) embed(d *document) (ref, error) {
 	descendant := d.add(fmt.Sprintf("<< /Type /Font /Subtype /CIDFontType2 /BaseFont %s /CIDSystemInfo << /Registry (Adobe) /Ordering (Identity) /Supplement 0 >> /FontDescriptor %v /CIDToGIDMap /Identity /DW 1000 /W [%s] >>",
 		name, descriptor, strings.TrimSpace(widths.String())))
 	unicode := d.stream("", f.toUnicode(glyphs))
-	return d.add(fmt.Sprintf("<< /Type /Font /Subtype /Type0 /BaseFont %s /Encoding /Identity-H /DescendantFonts [%v] /ToUnicode %v >>",
-		name, descendant, unicode)), nil
+	d.fill(at, fmt.Sprintf("<< /Type /Font /Subtype /Type0 /BaseFont %s /Encoding /Identity-H /DescendantFonts [%v] /ToUnicode %v >>",
+		name, descendant, unicode))
+	return nil
 }
 
 func (f *face) toUnicode(glyphs []sfnt.GlyphIndex) []byte {

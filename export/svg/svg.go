@@ -111,8 +111,8 @@ func (p *printer) dash(dash []float64) {
 
 func (p *printer) step(s export.Step) {
 	end := "/>\n"
-	if disc, ok := outline.AsCircle(s.Closed); ok {
-		fmt.Fprintf(&p.b, "<circle cx=\"%s\" cy=\"%s\" r=\"%s\"", num(disc.Centre.X), num(p.height-disc.Centre.Y), num(disc.Radius))
+	if centre, radius, ok := s.Closed.AsCircle(); ok {
+		fmt.Fprintf(&p.b, "<circle cx=\"%s\" cy=\"%s\" r=\"%s\"", num(centre.X), num(p.height-centre.Y), num(radius))
 		if s.Part != "" {
 			end = "><title>" + escape(s.Part) + "</title></circle>\n"
 		}
