@@ -5,6 +5,7 @@ import (
 	"errors"
 	"io"
 	"io/fs"
+	"path/filepath"
 	"regexp"
 	"slices"
 	"strings"
@@ -20,7 +21,7 @@ type cell struct {
 // sheetRows is a table as rows of cells, the heading first.
 type sheetRows [][]cell
 
-// table opens and reads a CSV file that the job names: fields between commas (or semicolons, when
+// csvTable opens and reads a CSV file that the job names: fields between commas (or semicolons, when
 // the heading has them and no comma), # begins a line of comment.
 func (r *reader) csvTable(v *value) (sheetRows, bool) {
 	if !v.ok() {
@@ -44,8 +45,12 @@ func (r *reader) csvTable(v *value) (sheetRows, bool) {
 		return nil, false
 	}
 	file := v.text
-	if file == r.name {
-		file = "./" + file
+	if !filepath.IsAbs(file) {
+		file = filepath.Join(filepath.Dir(r.name), filepath.FromSlash(file))
+	}
+	if file == filepath.Clean(r.name) {
+		r.fail(v.at, "name the CSV file", "%s is the job file itself", short(v.text))
+		return nil, false
 	}
 	s, text, bad := newSource(file, data, mostTableBytes)
 	r.sources[file] = s

@@ -123,7 +123,7 @@ func excerpt(line string, column, span int) (shown, carets string) {
 // printable replaces what a terminal would obey rather than show.
 func printable(s string) string {
 	return strings.Map(func(c rune) rune {
-		if (c < ' ' && c != '\t') || c == 0x7f || c == utf8.RuneError || (c >= 0x80 && c < 0xa0) || c == 0x2028 || c == 0x2029 {
+		if c < ' ' && c != '\t' || c >= 0x7f && c < 0xa0 || c == utf8.RuneError || c == 0x2028 || c == 0x2029 || c == 0xfeff {
 			return '?'
 		}
 		return c

@@ -1,14 +1,17 @@
 package job
 
 import (
+	"bytes"
 	"errors"
 	"os"
 	"path/filepath"
+	"strings"
 	"testing"
+	"unicode/utf8"
 )
 
-// sound fails on an error that is not of type Errors, or without a place in its file.
-func sound(t *testing.T, j Job, err error) {
+// sound fails on an error that is not of type Errors, or without a place in the text of its file.
+func sound(t *testing.T, j Job, err error, files map[string][]byte) {
 	t.Helper()
 	if err == nil {
 		complete(t, j)
@@ -19,8 +22,17 @@ func sound(t *testing.T, j Job, err error) {
 		t.Fatalf("error of another type: %v", err)
 	}
 	for _, e := range all {
-		if e.File == "" || e.Line < 1 || e.Column < 1 || e.Span < 1 || e.Message == "" {
+		text, known := files[e.File]
+		if !known || e.Span < 1 || e.Message == "" {
 			t.Fatalf("error without a place: %+v", e)
+		}
+		text = bytes.ReplaceAll(bytes.ReplaceAll(bytes.TrimPrefix(text, []byte("\xef\xbb\xbf")), []byte("\r\n"), []byte("\n")), []byte("\r"), []byte("\n"))
+		lines := strings.Split(string(text), "\n")
+		if e.Line < 1 || e.Line > len(lines) || e.Column < 1 || e.Column > 1+utf8.RuneCountInString(lines[e.Line-1]) {
+			t.Fatalf("place outside of the file: %+v", e)
+		}
+		if e.Source != lines[e.Line-1] && e.Source != "" {
+			t.Fatalf("the line is %q: %+v", lines[e.Line-1], e)
 		}
 	}
 	if len(err.Error()) == 0 {
@@ -47,8 +59,12 @@ func FuzzParse(f *testing.F) {
 		f.Fatal(err)
 	}
 	f.Fuzz(func(t *testing.T, data []byte) {
-		j, err := Parse("fuzz.yaml", data, func(string) ([]byte, error) { return tables, nil })
-		sound(t, j, err)
+		files := map[string][]byte{"fuzz.yaml": data}
+		j, err := Parse("fuzz.yaml", data, func(name string) ([]byte, error) {
+			files[filepath.Clean(name)] = tables
+			return tables, nil
+		})
+		sound(t, j, err, files)
 	})
 }
 
@@ -76,7 +92,7 @@ func fuzzTable(f *testing.F, name string) {
 	}
 	f.Fuzz(func(t *testing.T, data []byte) {
 		j, err := Parse(name+".yaml", job, func(string) ([]byte, error) { return data, nil })
-		sound(t, j, err)
+		sound(t, j, err, map[string][]byte{name + ".yaml": job, name + ".csv": data})
 	})
 }
 

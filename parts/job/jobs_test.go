@@ -227,7 +227,7 @@ func TestLineEnds(t *testing.T) {
 
 func TestAt(t *testing.T) {
 	j := mustRead(t, "watt-table.yaml")
-	file := filepath.Join(jobsDir, "watt-table.yaml")
+	file, table := filepath.Join(jobsDir, "watt-table.yaml"), filepath.Join(jobsDir, "watt-table.csv")
 	for path, want := range map[string]Position{
 		"":                                    {file, 3, 1},
 		"job":                                 {file, 3, 6},
@@ -235,8 +235,8 @@ func TestAt(t *testing.T) {
 		"linkage.links.coupler.width":         {file, 16, 14},
 		"linkage.links.right-arm.plane":       {file, 17, 24},
 		"linkage.joints.O.ground.0":           {file, 8, 18},
-		"linkage.links.coupler.lengths.A-P":   {"watt-table.csv", 5, 13},
-		"linkage.links.coupler.lengths.P-A":   {"watt-table.csv", 5, 13},
+		"linkage.links.coupler.lengths.A-P":   {table, 5, 13},
+		"linkage.links.coupler.lengths.P-A":   {table, 5, 13},
 		"stock.clear3.kerf":                   {file, 24, 86},
 		"nothing.of.this":                     {file, 3, 1},
 		"linkage.links.nobody.width":          {file, 14, 3},
@@ -248,7 +248,7 @@ func TestAt(t *testing.T) {
 		}
 	}
 	e := j.Fault("linkage.links.coupler.lengths.A-P", "too short", "make it longer")
-	want := "watt-table.csv:5:13: too short\n  coupler,A,P,15\n              ^\n  make it longer"
+	want := table + ":5:13: too short\n  coupler,A,P,15\n              ^\n  make it longer"
 	if e.Error() != want {
 		t.Errorf("got\n%s\nwant\n%s", e.Error(), want)
 	}

@@ -79,8 +79,11 @@ func newSource(name string, data []byte, most int) (*source, []byte, *Error) {
 			switch {
 			case c == utf8.RuneError && width == 1:
 				message, hint = fmt.Sprintf("byte 0x%02X is not UTF-8 text", line[b]), "save the file as UTF-8"
-			case c < ' ' && c != '\t', c == 0x7f:
+			case c < ' ' && c != '\t', c >= 0x7f && c < 0xa0:
 				message, hint = fmt.Sprintf("control character 0x%02X", c), "is it the right file? Else take the character out"
+			case c == 0x2028, c == 0x2029, c == 0xfeff:
+				// YAML ends lines at the first two, editors do not: places would not agree.
+				message, hint = fmt.Sprintf("invisible character U+%04X", c), "take it out; lines end with the return key"
 			default:
 				continue
 			}
