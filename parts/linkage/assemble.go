@@ -10,7 +10,9 @@ import (
 const (
 	maxAssemblies = 512     // assemblies kept
 	maxBranches   = 1 << 15 // branches of the search looked at
+	quickBranches = 1 << 10 // the same when any one assembly will do
 	maxShapeSets  = 1024    // combinations of mirrored shapes
+	maxBlockSets  = 32      // the same when there is a block, each of which takes a search
 	blockStarts   = 60      // first guesses for a block
 	blockMost     = 32      // assemblies of one block
 	sameAssembly  = 1e-6    // of the longest length: closer than this is the same place
@@ -66,10 +68,16 @@ func (m *Mechanism) assemble(angle float64, ground []Point, most int) ([]assembl
 
 // shapeSets lists which of its shapes each link takes, all combinations within reason.
 func (m *Mechanism) shapeSets() [][]int {
+	most := maxShapeSets
+	for _, s := range m.plan {
+		if s.kind == blockStep {
+			most = maxBlockSets
+		}
+	}
 	sets := [][]int{make([]int, len(m.pins))}
 	for k := range m.pins {
 		choice := m.likelyShapes(k)
-		if len(sets)*len(choice) > maxShapeSets {
+		if m.isSurplus(k) || len(sets)*len(choice) > most {
 			choice = choice[:1]
 		}
 		var next [][]int
@@ -130,7 +138,11 @@ type search struct {
 
 // from goes through the program from step k on, f holding what is placed before it.
 func (s *search) from(k int, f *frame) {
-	if *s.branches++; len(*s.found) >= s.most || *s.branches > maxBranches {
+	limit := maxBranches
+	if s.most == 1 {
+		limit = quickBranches
+	}
+	if *s.branches++; len(*s.found) >= s.most || *s.branches > limit {
 		return
 	}
 	if k == len(s.pr.steps) {

@@ -116,3 +116,81 @@ func BenchmarkAnalyseEightBarLeg(b *testing.B) {
 		}
 	}
 }
+
+// TestDrivenFromElsewhere: the same six-bar driven by an arm instead of the crank is all dyads; both
+// ways of solving it give the same places.
+func TestDrivenFromElsewhere(t *testing.T) {
+	l, _ := load(t, "stephenson.json")
+	triad := cycleOf(t, l, 90)
+	m := triad.m
+	at := func(n string) int { i, _ := m.Joint(n); return i }
+	O, G, A, P := at("O"), at("G"), at("A"), at("P")
+	start := triad.Positions[30].Places
+	d := l
+	d.Joints = append([]Joint(nil), l.Joints...)
+	for i := range d.Joints {
+		if d.Joints[i].Ground == nil {
+			p := start[i]
+			d.Joints[i].Near = &p
+		}
+	}
+	angle := func(p []Point, from, to int) float64 {
+		return math.Atan2(p[to].Y-p[from].Y, p[to].X-p[from].X)
+	}
+	d.Drive = Drive{Link: "left-arm", From: angle(start, G, P), To: angle(triad.Positions[38].Places, G, P)}
+	dyads := cycleOf(t, d, 20)
+	for _, g := range dyads.m.Groups()[1:] {
+		if !g.Dyad {
+			t.Fatalf("groups %+v, want dyads", dyads.m.Groups())
+		}
+	}
+	for _, p := range dyads.Positions {
+		crank := angle(p.Places, O, A)
+		if crank < 0 {
+			crank += 2 * math.Pi
+		}
+		q, err := triad.At(crank)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if !samePlaces(p.Places, q.Places, 1e-8) {
+			t.Fatalf("at crank %g deg the two differ: %v and %v", deg(crank), p.Places, q.Places)
+		}
+	}
+	c := triad.Conditions()
+	if len(c) != 1 || !(c[0].Least > 0.01 && c[0].Least < 2) {
+		t.Errorf("conditions %+v", c)
+	}
+}
+
+// TestTriadStops: a block that does not close names its links and where.
+func TestTriadStops(t *testing.T) {
+	l, _ := load(t, "stephenson.json")
+	l.Links[0].Lengths[0].MM = 60
+	l.Links[1].Lengths[0].MM = 140
+	for i := range l.Joints {
+		if l.Joints[i].Name == "A" {
+			l.Joints[i].Near = pt(250, 60)
+		}
+	}
+	m, err := New(l)
+	if err != nil {
+		t.Fatal(err)
+	}
+	_, err = m.Cycle(90, nil)
+	e, ok := err.(*LoopError)
+	if !ok {
+		t.Fatalf("got %v, want a loop that does not close", err)
+	}
+	if len(e.Links) != 4 || e.Joint == "" || !(e.Short > 1) || len(e.Ranges) != 1 || !(e.Ranges[0].From < 0 && e.Ranges[0].To > 0) {
+		t.Errorf("%v (%+v)", e, *e)
+	}
+	// The linkage does close up to there, and not beyond.
+	l.Drive = Drive{Link: "crank", To: e.Ranges[0].To - 1e-4}
+	if m, err = New(l); err != nil {
+		t.Fatal(err)
+	}
+	if _, err = m.Cycle(20, nil); err != nil {
+		t.Error(err)
+	}
+}

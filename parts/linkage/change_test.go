@@ -129,3 +129,71 @@ func TestNarrowGap(t *testing.T) {
 		near(t, "stops at", e.Angle, want, 1e-6)
 	}
 }
+
+// TestDoubledLinks: plies of the same link, bars and plates, say nothing new; a ply that differs is
+// found.
+func TestDoubledLinks(t *testing.T) {
+	l, _ := load(t, "jansen.json")
+	for _, n := range []int{0, 2, 3} { // crank, a rod, a plate
+		k := l.Links[n]
+		k.Name += "-back"
+		l.Links = append(l.Links, k)
+	}
+	plate := &l.Links[len(l.Links)-1]
+	plate.Lengths = append([]Length(nil), plate.Lengths...)
+	m, err := New(l)
+	if err != nil {
+		t.Fatal(err)
+	}
+	r, err := m.Analyse(Options{Steps: 72})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(r.Surplus) != 3 || r.Mobility != 1 || r.Gruebler >= 1 || r.Set.Closure > 1e-10 {
+		t.Errorf("surplus %v, mobility %d by rank and %d by counting, closure %g", r.Surplus, r.Mobility, r.Gruebler, r.Set.Closure)
+	}
+	plate.Lengths[0].MM += 0.2
+	if _, err = Analyse(l, Options{Steps: 72}); err == nil {
+		t.Error("a ply that is 0.2 mm longer goes through")
+	}
+}
+
+func TestDeadEnd(t *testing.T) {
+	l, _ := load(t, "fourbar.json")
+	l.Links[2].Lengths[0].MM = 50
+	low := math.Acos((40*40 + 100*100 - 70*70) / (2 * 40 * 100.0))
+	l.Drive = Drive{Link: "crank", From: math.Pi, To: low} // driven backwards into the dead end
+	m, err := New(l)
+	if err != nil {
+		t.Fatal(err)
+	}
+	c, err := m.Cycle(50, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	g := c.Toggles()
+	if n := len(g); n == 0 || g[n-1].Kind != DeadEnd || g[n-1].Joint != "B" || math.Abs(g[n-1].Angle-low) > 1e-12 {
+		t.Errorf("toggles %+v, want a dead end of B at %g", g, low)
+	}
+}
+
+// TestReversals: the rocker of a crank-rocker turns back where crank and coupler are in line, which
+// the law of cosines gives.
+func TestReversals(t *testing.T) {
+	l, _ := load(t, "fourbar.json")
+	c := cycleOf(t, l, 50)
+	var got []float64
+	for _, g := range c.Toggles() {
+		if g.Kind == Reversal && g.Joint == "D" {
+			got = append(got, g.Angle)
+		}
+	}
+	in := func(ob float64) float64 { return math.Acos((ob*ob + 100*100 - 80*80) / (2 * ob * 100)) }
+	want := []float64{in(120 + 40), math.Pi + in(120-40)}
+	if len(got) != 2 {
+		t.Fatalf("reversals at %v, want two", got)
+	}
+	for i := range want {
+		near(t, "reversal", got[i], want[i], 1e-10)
+	}
+}

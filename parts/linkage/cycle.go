@@ -129,10 +129,9 @@ func (m *Mechanism) comesBack(start *frame, w *walker, setting Setting) error {
 // surplusFits checks the links that were left out of the solution because others say the same.
 func (m *Mechanism) surplusFits(c *Cycle) error {
 	for _, k := range m.surplus {
-		want := m.shape[k][1].X
 		worst, at := 0.0, 0.0
 		for _, p := range c.Positions {
-			if d := math.Abs(dist(p.Places[m.pins[k][0]], p.Places[m.pins[k][1]]) - want); d > worst {
+			if d := fits(m.pins[k], m.shape[k], p.Places); d > worst {
 				worst, at = d, p.Angle
 			}
 		}

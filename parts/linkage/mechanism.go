@@ -98,6 +98,11 @@ func New(l Linkage) (*Mechanism, error) {
 		out[k] = true
 	}
 	m.plan = plan(len(m.jointNames), m.pins, m.isGround, m.drive, out)
+	for _, s := range m.plan {
+		if s.kind == blockStep && len(s.joints) > maxBlock {
+			return nil, fmt.Errorf("linkage: %s have to be solved together, %d joints at once; at most %d are solved", andList(m.linkNames(s.links)), len(s.joints), maxBlock)
+		}
+	}
 	if err := m.putTogether(); err != nil {
 		return nil, err
 	}
@@ -129,9 +134,10 @@ func (m *Mechanism) span() (from, to float64) {
 	return d.From, d.From + 2*math.Pi
 }
 
-// countFreedom finds free joints and links that say nothing new. Of the latter it leaves out two-pin
-// links, last first, until the rest is independent; whether they fit is checked at every step of the
-// drive, as a third equal bar of a parallelogram does.
+// countFreedom finds free joints and links that say nothing new. Of the latter it leaves out links
+// until the rest is independent, two-pin links first and then plates whose joints the others hold
+// (the second ply of a doubled link), the last in the list first. Whether they fit is checked at
+// every step of the drive, as a third equal bar of a parallelogram does.
 func (m *Mechanism) countFreedom() error {
 	m.gruebler = gruebler(m.linkage)
 	held := append([]bool(nil), m.isGround...)
@@ -142,18 +148,13 @@ func (m *Mechanism) countFreedom() error {
 	m.generic = genericFreedom(len(m.jointNames), m.pins, held, out)
 	f := m.generic
 	for f.surplus > 0 {
-		pick := -1
-		for _, k := range f.stress {
-			if len(m.pins[k]) == 2 {
-				pick = k
-			}
-		}
+		pick, next := m.spare(f, held, out)
 		if pick < 0 {
 			break
 		}
 		out[pick] = true
 		m.surplus = append(m.surplus, pick)
-		f = genericFreedom(len(m.jointNames), m.pins, held, out)
+		f = next
 	}
 	if f.freely > 0 || f.surplus > 0 {
 		e := &MobilityError{Mobility: 1 + f.freely, Joints: m.names(m.generic.free), Links: m.linkNames(m.generic.stress)}
@@ -163,6 +164,38 @@ func (m *Mechanism) countFreedom() error {
 		return e
 	}
 	return nil
+}
+
+// spare returns a link that can be left out without freeing a joint, and what is left then; -1 when
+// there is none.
+func (m *Mechanism) spare(f freedom, held []bool, out map[int]bool) (int, freedom) {
+	without := func(k int) freedom {
+		out[k] = true
+		g := genericFreedom(len(m.jointNames), m.pins, held, out)
+		delete(out, k)
+		return g
+	}
+	for _, plates := range []bool{false, true} {
+		for i := len(f.stress) - 1; i >= 0; i-- {
+			k := f.stress[i]
+			if (len(m.pins[k]) > 2) != plates {
+				continue
+			}
+			if g := without(k); g.freely == f.freely {
+				return k, g
+			}
+		}
+	}
+	return -1, f
+}
+
+func (m *Mechanism) isSurplus(k int) bool {
+	for _, s := range m.surplus {
+		if s == k {
+			return true
+		}
+	}
+	return false
 }
 
 func (m *Mechanism) names(joints []int) []string {
@@ -210,6 +243,14 @@ func (m *Mechanism) putTogether() error {
 	}
 	a := rivals[take]
 	m.start, m.shape, m.prog = a.frame, a.shape, a.prog
+	for _, k := range m.surplus {
+		best := math.Inf(1)
+		for _, shape := range m.shapes[k] {
+			if off := fits(m.pins[k], shape, a.frame.p); off < best {
+				best, m.shape[k] = off, shape
+			}
+		}
+	}
 	m.start.angle = from
 	for i, s := range m.prog.steps {
 		if s.kind == dyadStep && m.start.flat[s.index] {

@@ -245,16 +245,43 @@ func (f *frame) meet(d *dyad, i int) bool {
 	return true
 }
 
-// closure returns the largest difference between a length and the distance of its pins, mm, over the
-// links given by their pins and shapes.
+// fits returns by how much the joints in place miss the shape of a link, mm: the largest difference
+// of a distance between two pins, or of a pin's place as carried from the base, which also tells a
+// mirrored shape.
+func fits(pins []int, shape, p []Point) float64 {
+	worst := 0.0
+	for i, a := range pins {
+		for j := range i {
+			worst = math.Max(worst, math.Abs(dist(p[a], p[pins[j]])-dist(shape[i], shape[j])))
+		}
+	}
+	if len(pins) > 2 {
+		a, b := base(pins, shape, nil)
+		var pa, pb Point
+		for i, j := range pins {
+			if j == a {
+				pa = shape[i]
+			}
+			if j == b {
+				pb = shape[i]
+			}
+		}
+		for i, j := range pins {
+			c := carry(0, j, a, b, shape[i], pa, pb)
+			d := sub(p[b], p[a])
+			at := Point{X: p[a].X + c.alpha*d.X - c.beta*d.Y, Y: p[a].Y + c.alpha*d.Y + c.beta*d.X}
+			worst = math.Max(worst, dist(at, p[j]))
+		}
+	}
+	return worst
+}
+
+// closure returns the largest difference between a length and the distance of its pins, mm, over all
+// links.
 func closure(pins [][]int, shape [][]Point, p []Point) float64 {
 	worst := 0.0
 	for k := range pins {
-		for i, a := range pins[k] {
-			for j := 0; j < i; j++ {
-				worst = math.Max(worst, math.Abs(dist(p[a], p[pins[k][j]])-dist(shape[k][i], shape[k][j])))
-			}
-		}
+		worst = math.Max(worst, fits(pins[k], shape[k], p))
 	}
 	return worst
 }

@@ -51,6 +51,7 @@ type SettingReport struct {
 	Err           error   // why it does not work there; the rest is then empty
 	Closure       float64 // largest error of any length at any position, mm
 	Transmissions []Transmission
+	Conditions    []Condition // of the groups that are no dyads
 	Toggles       []Toggle
 	Paths         []FootPath // of the traced joints, in their order
 }
@@ -132,6 +133,7 @@ func (m *Mechanism) reportAt(s Setting, o Options) SettingReport {
 	}
 	r.Closure = c.Closure()
 	r.Transmissions = c.Transmissions()
+	r.Conditions = c.Conditions()
 	r.Toggles = c.Toggles()
 	for _, t := range m.linkage.Trace {
 		if p, ok := c.FootPath(t, o.Bands); ok {

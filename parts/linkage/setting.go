@@ -7,7 +7,7 @@ import (
 )
 
 // startAt returns the start of the drive with the adjustable pivots at the setting: the assembly at
-// the set places, carried along in a straight line of parameters, halving the step where it must.
+// the set places, carried along the ranges, halving the step where it must.
 func (m *Mechanism) startAt(pr *program, setting Setting) (*frame, error) {
 	f := pr.newFrame()
 	f.copyFrom(m.start)
@@ -19,7 +19,11 @@ func (m *Mechanism) startAt(pr *program, setting Setting) (*frame, error) {
 		names = append(names, n)
 	}
 	sort.Strings(names)
-	goal := m.setPlaces()
+	type move struct {
+		joint    int
+		from, to float64
+	}
+	var moves []move
 	for _, n := range names {
 		j, ok := m.joint[n]
 		switch {
@@ -30,9 +34,9 @@ func (m *Mechanism) startAt(pr *program, setting Setting) (*frame, error) {
 		case !(setting[n] >= 0 && setting[n] <= 1):
 			return nil, fmt.Errorf("setting: %s of the range of %s is outside 0 to 1", number(setting[n]), n)
 		}
-		goal[j] = m.linkage.Joints[j].Ground.Range.Place(setting[n])
+		t, _ := m.linkage.Joints[j].Ground.Range.Nearest(m.linkage.Joints[j].Ground.At)
+		moves = append(moves, move{j, t, setting[n]})
 	}
-	begin := m.setPlaces()
 	g := pr.newFrame()
 	done, step := 0.0, 1.0
 	if pr.blocks > 0 {
@@ -41,11 +45,12 @@ func (m *Mechanism) startAt(pr *program, setting Setting) (*frame, error) {
 	for done < 1 {
 		to := math.Min(1, done+step)
 		g.copyFrom(f)
-		for _, j := range m.ground {
-			g.p[j] = Point{X: begin[j].X + to*(goal[j].X-begin[j].X), Y: begin[j].Y + to*(goal[j].Y-begin[j].Y)}
+		for _, v := range moves {
+			t := v.from + to*(v.to-v.from)
 			if to == 1 {
-				g.p[j] = goal[j]
+				t = v.to
 			}
+			g.p[v.joint] = m.linkage.Joints[v.joint].Ground.Range.Place(t)
 		}
 		if at, ok := pr.shift(f, g); !ok {
 			if step /= 2; step > 1e-6 {

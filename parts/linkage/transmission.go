@@ -1,6 +1,10 @@
 package linkage
 
-import "math"
+import (
+	"math"
+
+	"gonum.org/v1/gonum/mat"
+)
 
 // Transmission is the angle between the two links of a dyad at their common joint. At 90 degrees a
 // force goes through whole; near 0 or 180 the links lie in line and the joint may jam or jump.
@@ -64,4 +68,38 @@ func (d dyad) angle(f *frame) float64 {
 // spread is the speed at which the dyad's pivots part, times their distance.
 func (d dyad) spread(f *frame) float64 {
 	return dot(sub(f.p[d.b], f.p[d.a]), sub(f.v[d.b], f.v[d.a]))
+}
+
+// Condition is how well a block of links that are solved together holds its joints: the smallest
+// singular value of its Jacobian, in which a length error of a millimetre counts as 1 whatever the
+// size of the linkage. About 0.1 and more is firm; at 0 the block is loose, as a dyad is in line.
+type Condition struct {
+	Links   []string
+	Joints  []string
+	Least   float64
+	LeastAt float64 // drive angle, radians, of the position that has it
+}
+
+// Conditions returns the condition of every block over the positions of the cycle, in the order in
+// which they are solved; empty for a linkage of dyads.
+func (c *Cycle) Conditions() []Condition {
+	var out []Condition
+	for i, s := range c.prog.clone().steps {
+		if s.kind != blockStep {
+			continue
+		}
+		x := Condition{Links: c.m.linkNames(c.m.plan[i].links), Joints: c.m.names(s.joints), Least: math.Inf(1)}
+		for _, p := range c.Positions {
+			s.block.jacobian(p.Places, s.block.jac)
+			var svd mat.SVD
+			if !svd.Factorize(mat.NewDense(s.block.n, s.block.n, s.block.jac), mat.SVDNone) {
+				continue
+			}
+			if v := svd.Values(nil); v[len(v)-1] < x.Least {
+				x.Least, x.LeastAt = v[len(v)-1], p.Angle
+			}
+		}
+		out = append(out, x)
+	}
+	return out
 }

@@ -10,7 +10,8 @@ import (
 const (
 	maxJoints = 200
 	maxLinks  = 200
-	maxPins   = 8 // of one link
+	maxPins   = 8  // of one link
+	maxBlock  = 24 // joints solved together
 )
 
 // onRange is how far the set place of an adjustable pivot may lie off its range, mm.
