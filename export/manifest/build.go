@@ -1,11 +1,9 @@
 package manifest
 
 import (
-	"errors"
 	"fmt"
 	"math"
 
-	"pinwright/kerf"
 	"pinwright/parts"
 	"pinwright/parts/linkage"
 	"pinwright/parts/outline"
@@ -17,12 +15,32 @@ func MeasureOutline(o outline.Outline) Measure {
 	return Measure{Area: math.Abs(m.Area), Perimeter: o.Length(), Middle: Point(m.Centroid)}
 }
 
-// NewPart states what a part must measure when it is cut with a beam: its holes, its outside and its
-// mark. Where it lies, its area, mass, feet and lengths are the caller's to add (see LinkLengths and
-// PivotLengths). The measures are those that the beam leaves, so they are taken of the finished region
-// made from the cut path.
-func NewPart(p parts.Part, beam kerf.Beam) (Part, error) {
-	return Part{}, errors.New("x")
+// NewPart states what a part must measure when it is cut: its holes, its outside, its mark and its
+// area. finished is what the beam leaves of it when it runs along the cut paths, in the part's frame,
+// with the holes in the order of p.Holes: the part's region, but for corners that the beam cannot
+// enter. Where the part lies, its mass, feet and lengths are the caller's to add (see PlacementOf,
+// LinkLengths and PivotLengths).
+//
+// It is an error when the finished region has another number of holes than the part.
+func NewPart(p parts.Part, finished outline.Region) (Part, error) {
+	if len(finished.Holes) != len(p.Holes) {
+		return Part{}, fmt.Errorf("%s: %d holes are named, and the beam leaves %d", p.Name, len(p.Holes), len(finished.Holes))
+	}
+	out := Part{
+		Name: p.Name, Link: p.Link, Copy: p.Copy, Stock: p.Stock, Plane: p.Plane,
+		Mark: Mark{Text: p.Mark.Text, Strokes: len(p.Mark.Strokes)},
+		Area: finished.Area(), Outside: MeasureOutline(finished.Outer),
+	}
+	for _, s := range p.Mark.Strokes {
+		out.Mark.Length += s.Length()
+	}
+	for i, h := range p.Holes {
+		out.Holes = append(out.Holes, Hole{
+			Name: h.Name, Kind: string(h.Kind), Joint: h.Joint, Centre: Point(h.Centre), Diameter: h.Diameter,
+			Measure: MeasureOutline(finished.Holes[i]),
+		})
+	}
+	return out, nil
 }
 
 // LinkLengths lists the lengths of a link between those of its joints that the part shows, in the
@@ -59,5 +77,3 @@ func PivotLengths(l linkage.Linkage, p Part) []Length {
 func PlacementOf(t outline.Transform) Placement {
 	return Placement{Flip: t.Mirror, Turn: t.Angle() * 180 / math.Pi, X: t.Move.X, Y: t.Move.Y}
 }
-
-var _ = fmt.Sprint

@@ -8,6 +8,7 @@ import (
 	"testing"
 
 	"pinwright/export/manifest"
+	"pinwright/parts"
 	"pinwright/parts/linkage"
 	"pinwright/parts/outline"
 )
@@ -164,6 +165,38 @@ func TestLengths(t *testing.T) {
 	p.Holes = append(p.Holes, manifest.Hole{Name: "C", Kind: "pin", Joint: "C"})
 	if got := manifest.PivotLengths(l, p); !reflect.DeepEqual(got, []manifest.Length{{A: "A", B: "B", MM: 5}}) {
 		t.Errorf("%v", got)
+	}
+}
+
+func TestNewPart(t *testing.T) {
+	p := parts.Part{
+		Name: "left.bar", Link: "bar", Copy: "left", Stock: "clear3", Plane: 2,
+		Holes: []parts.Hole{{Name: "A", Kind: parts.PinHole, Joint: "A", Centre: outline.Point{X: 10}, Diameter: 4}},
+		Mark:  parts.Mark{Text: "L", Strokes: []outline.Path{{{}, {Point: outline.Point{X: 3}}, {Point: outline.Point{X: 3, Y: 4}}}}},
+	}
+	region := outline.Region{
+		Outer: outline.Rectangle(outline.Point{}, outline.Point{X: 20, Y: 10}),
+		Holes: []outline.Outline{outline.CircleHole(outline.Point{X: 10}, 2)},
+	}
+	got, err := manifest.NewPart(p, region)
+	if err != nil {
+		t.Fatal(err)
+	}
+	// Rectangle and circle by their closed forms.
+	if math.Abs(got.Outside.Area-200) > 1e-12 || got.Outside.Perimeter != 60 || got.Outside.Middle != (manifest.Point{X: 10, Y: 5}) {
+		t.Errorf("outside %+v", got.Outside)
+	}
+	hole := got.Holes[0]
+	if math.Abs(hole.Measure.Area-4*math.Pi) > 1e-12 || math.Abs(hole.Measure.Perimeter-4*math.Pi) > 1e-12 ||
+		math.Abs(hole.Measure.Middle.X-10) > 1e-12 || hole.Kind != "pin" || hole.Diameter != 4 {
+		t.Errorf("hole %+v", hole)
+	}
+	if math.Abs(got.Area-(200-4*math.Pi)) > 1e-12 || got.Mark != (manifest.Mark{Text: "L", Strokes: 1, Length: 7}) || got.Plane != 2 {
+		t.Errorf("%+v", got)
+	}
+	region.Holes = nil
+	if _, err := manifest.NewPart(p, region); err == nil || err.Error() != "left.bar: 1 holes are named, and the beam leaves 0" {
+		t.Errorf("got %v", err)
 	}
 }
 

@@ -19,19 +19,22 @@ func (l *ledger) engraving(s *scene) {
 	}
 	sort.SliceStable(sorted, func(a, b int) bool { return s.cuts[sorted[a]].box.Min.X < s.cuts[sorted[b]].box.Min.X })
 
+	least := math.Inf(1)
 	s.marks = make([]marking, len(s.parts))
 	for _, k := range s.strokes {
 		l.count(engraving, 1)
 		owner, ownerArea := -1, math.Inf(1)
 		for _, i := range sorted {
 			c := &s.cuts[i]
-			if c.box.Min.X > k.box.Max.X+clear+gapSlack {
+			reach := math.Max(clear+gapSlack, least)
+			if c.box.Min.X-k.box.Max.X > reach {
 				break
 			}
-			if c.box.Distance(k.box) > clear+gapSlack {
+			if c.box.Distance(k.box) > reach {
 				continue
 			}
 			nearest := strokeDistance(k.path, c.path)
+			least = math.Min(least, nearest.Distance)
 			l.gap(engraving, nearest.Distance, clear, s.file+" "+near(nearest.A))
 			switch {
 			case nearest.Distance <= gapSlack:

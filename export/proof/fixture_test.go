@@ -6,7 +6,6 @@ import (
 	"encoding/hex"
 	"math"
 	"strings"
-	"testing"
 	"testing/fstest"
 
 	"pinwright/export"
@@ -18,6 +17,12 @@ import (
 
 // The contours here are made by closed form and not by the geometry under proof: the rounded hull of
 // convex corners, whose parallel at distance d is the hull with a radius larger by d.
+
+// tester is what the helpers need of a test, a benchmark or a property.
+type tester interface {
+	Helper()
+	Fatal(...any)
+}
 
 // hull is the contour round discs of one radius at the corners of a convex polygon (counter-clockwise),
 // at two points (a bar) or one (a disc).
@@ -53,22 +58,35 @@ func steiner(radius float64, corners ...outline.Point) (area, perimeter float64)
 	return area + perimeter*radius + math.Pi*radius*radius, perimeter + 2*math.Pi*radius
 }
 
-// shape is a contour of a part by its corners and its finished radius.
+// shape is a contour of a part by its corners and its finished radius, or by what the beam leaves and
+// the path for it.
 type shape struct {
 	radius  float64
 	corners []outline.Point
+
+	left, cut outline.Outline
+}
+
+// rounded is the shape round corners.
+func rounded(radius float64, corners ...outline.Point) shape {
+	return shape{radius: radius, corners: corners}
 }
 
 func pt(x, y float64) outline.Point { return outline.Point{X: x, Y: y} }
 
-func (h shape) finished() outline.Outline { return hull(h.radius, h.corners...) }
 func (h shape) path(by float64) outline.Outline {
+	if h.cut != nil {
+		return h.cut
+	}
 	return hull(h.radius+by, h.corners...)
 }
 
 func (h shape) measure() manifest.Measure {
+	if h.left != nil {
+		return manifest.MeasureOutline(h.left)
+	}
 	area, perimeter := steiner(h.radius, h.corners...)
-	m := manifest.MeasureOutline(h.finished())
+	m := manifest.MeasureOutline(hull(h.radius, h.corners...))
 	m.Area, m.Perimeter = area, perimeter
 	return m
 }
@@ -89,7 +107,7 @@ func (m model) bore(joint string, at outline.Point, diameter float64) model {
 	m.holes = append(m.holes[:len(m.holes):len(m.holes)], manifest.Hole{
 		Name: joint, Kind: "pin", Joint: joint, Centre: manifest.Point(at), Diameter: diameter,
 	})
-	m.shapes = append(m.shapes[:len(m.shapes):len(m.shapes)], shape{diameter / 2, []outline.Point{at}})
+	m.shapes = append(m.shapes[:len(m.shapes):len(m.shapes)], rounded(diameter/2, at))
 	return m
 }
 
@@ -104,7 +122,7 @@ func (m model) window(s shape) model {
 
 func bar(name string, length float64) model {
 	m := model{
-		name: name, outside: shape{7, []outline.Point{pt(0, 0), pt(length, 0)}},
+		name: name, outside: rounded(7, pt(0, 0), pt(length, 0)),
 		marks:   []outline.Path{{{Point: pt(8, -1)}, {Point: pt(8, 1)}, {Point: pt(9, 1)}}, {{Point: pt(11, -1)}, {Point: pt(12, 0.5)}}},
 		lengths: []manifest.Length{{A: "A", B: "B", MM: length}},
 	}
@@ -122,7 +140,7 @@ func ternary(name string, mirror bool, bc, bd, cd float64) model {
 	}
 	up := d.Y / math.Abs(d.Y)
 	m := model{
-		name: name, outside: shape{9, corners},
+		name: name, outside: rounded(9, corners...),
 		marks:   []outline.Path{{{Point: pt(10, 2*up)}, {Point: pt(13, 2*up), Bulge: 0.5}, {Point: pt(15, 4*up)}}},
 		lengths: []manifest.Length{{A: "B", B: "C", MM: bc}, {A: "B", B: "D", MM: bd}, {A: "C", B: "D", MM: cd}},
 	}
@@ -131,14 +149,35 @@ func ternary(name string, mirror bool, bc, bd, cd float64) model {
 
 // frame is a plate of the frame with a window large enough for a small part.
 func frame() model {
-	m := model{name: "frame", outside: shape{8, []outline.Point{pt(0, 0), pt(60, 0), pt(60, 50), pt(0, 50)}}}
+	m := model{name: "frame", outside: rounded(8, pt(0, 0), pt(60, 0), pt(60, 50), pt(0, 50))}
 	m.lengths = []manifest.Length{{A: "O", B: "P", MM: 60}}
-	return m.bore("O", pt(0, 0), 6).bore("P", pt(60, 0), 6).window(shape{3, []outline.Point{pt(10, 10), pt(50, 10), pt(50, 40), pt(10, 40)}})
+	return m.bore("O", pt(0, 0), 6).bore("P", pt(60, 0), 6).window(rounded(3, pt(10, 10), pt(50, 10), pt(50, 40), pt(10, 40)))
 }
 
 // disc is a round part that fits into the frame's window.
 func disc() model {
-	return model{name: "disc", outside: shape{8, []outline.Point{pt(0, 0)}}}.bore("A", pt(0, 0), 4.5)
+	return model{name: "disc", outside: rounded(8, pt(0, 0))}.bore("A", pt(0, 0), 4.5)
+}
+
+// flatted adds a round bore about the origin with a flat at x = flat, by closed form: the beam runs
+// half a kerf inside, and leaves its own radius in the two corners.
+func (m model) flatted(joint string, radius, flat float64) model {
+	const h = kerfWidth / 2
+	corner := pt(flat-h, math.Sqrt((radius-h)*(radius-h)-(flat-h)*(flat-h)))
+	down := pt(corner.X, -corner.Y)
+	angle := corner.Angle()
+	far := math.Tan((2*math.Pi - 2*angle) / 4)
+	bend := math.Tan(angle / 4)
+	s := shape{
+		cut: outline.Outline{{Point: corner, Bulge: far}, {Point: down}},
+		left: outline.Outline{
+			{Point: corner.Add(outline.Polar(h, angle)), Bulge: far}, {Point: down.Add(outline.Polar(h, -angle)), Bulge: bend},
+			{Point: down.Add(pt(h, 0))}, {Point: corner.Add(pt(h, 0)), Bulge: bend},
+		},
+	}
+	m.holes = append(m.holes[:len(m.holes):len(m.holes)], manifest.Hole{Name: joint, Kind: "shaft", Joint: joint})
+	m.shapes = append(m.shapes[:len(m.shapes):len(m.shapes)], s)
+	return m
 }
 
 const (
@@ -209,7 +248,7 @@ func (r *run) add(p placed) {
 
 // write gives the folder with its manifest. edit, when not nil, changes the drawing's text after it
 // was listed, unless fix is set: then the manifest is brought in line, so that the hash says nothing.
-func (r run) write(t testing.TB, fix bool, edit func(string) string) fstest.MapFS {
+func (r run) write(t tester, fix bool, edit func(string) string) fstest.MapFS {
 	t.Helper()
 	var buf bytes.Buffer
 	if err := dxf.Write(&buf, r.sheet, dxf.Options{}); err != nil {
@@ -254,7 +293,7 @@ func demo() run {
 	)
 }
 
-func check(t testing.TB, fsys fstest.MapFS) proof.Report {
+func check(t tester, fsys fstest.MapFS) proof.Report {
 	t.Helper()
 	r, err := proof.Check(fsys)
 	if err != nil {
@@ -264,7 +303,7 @@ func check(t testing.TB, fsys fstest.MapFS) proof.Report {
 }
 
 // printed is a report as people see it.
-func printed(t testing.TB, r proof.Report) string {
+func printed(t tester, r proof.Report) string {
 	t.Helper()
 	var b strings.Builder
 	if err := r.Write(&b); err != nil {

@@ -1,5 +1,7 @@
 package proof
 
+import "math"
+
 // mostFindings is how many findings of one check are listed; an edit that spoils everything would
 // otherwise bury its cause.
 const mostFindings = 25
@@ -29,19 +31,26 @@ func (l *ledger) fail(check string, f Finding) {
 	c.Findings = append(c.Findings, f)
 }
 
-// error enters a deviation and keeps it if it is the largest.
+// resolution is the step to which figures are kept, mm: finer differences are rounding, and would make
+// the report differ from machine to machine.
+const resolution = 1e-9
+
+func rounded(v float64) float64 { return math.Round(v/resolution) * resolution }
+
+// error enters a deviation and keeps it if it is the largest, of like ones the first.
 func (l *ledger) error(check string, value, limit float64, where string) {
 	c := l.checks[check]
-	if c.Figure == nil || value > c.Figure.Value {
-		c.Figure = &Figure{"largest error", value, limit, where}
+	if c.Figure == nil || rounded(value) > c.Figure.Value {
+		c.Figure = &Figure{largest, "allowed", rounded(value), limit, where}
 	}
 }
 
-// gap enters a distance with its least, and keeps it if it is the tightest against its own least.
+// gap enters a distance with its least, and keeps it if it is the tightest against its own least, of
+// like ones the first.
 func (l *ledger) gap(check string, value, limit float64, where string) {
 	c := l.checks[check]
-	if c.Figure == nil || value-limit < c.Figure.Value-c.Figure.Limit {
-		c.Figure = &Figure{"least", value, limit, where}
+	if c.Figure == nil || rounded(value)-limit < c.Figure.Value-c.Figure.Limit-resolution/2 {
+		c.Figure = &Figure{"least", "wanted", rounded(value), limit, where}
 	}
 }
 

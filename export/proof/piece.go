@@ -95,7 +95,7 @@ func moved(c *cut, by float64) (outline.Outline, bool) {
 		radius := c.circle.Radius + by
 		return outline.Circle(c.circle.Centre, radius), radius > 0
 	}
-	edges := c.path.Offset(by)
+	edges := outline.OffsetOutline(c.path, by)
 	if len(edges) != 1 || !(edges[0].Area() > 0) {
 		return nil, false
 	}

@@ -3,6 +3,7 @@ package proof
 import (
 	"fmt"
 	"io"
+	"math"
 	"strconv"
 	"strings"
 )
@@ -30,10 +31,14 @@ type Result struct {
 // Figure is the worst of what a check measured.
 type Figure struct {
 	Word  string  `json:"word"`  // "largest error", "least"
-	Value float64 `json:"value"` // mm
+	Bound string  `json:"bound"` // "allowed", "wanted"
+	Value float64 `json:"value"` // mm, in steps of 1e-9
 	Limit float64 `json:"limit"` // mm
 	Where string  `json:"where"`
 }
+
+// largest is the word of a figure that should be small.
+const largest = "largest error"
 
 // Finding is one thing that is wrong.
 type Finding struct {
@@ -115,7 +120,11 @@ func (r Report) Write(w io.Writer) error {
 		}
 		fmt.Fprintf(&b, "%s  %-17s %6d compared", state, c.Name, c.Compared)
 		if f := c.Figure; f != nil {
-			fmt.Fprintf(&b, ", %s %s of %s mm at %s", f.Word, figure(f.Value), figure(f.Limit), f.Where)
+			value := figure(f.Value)
+			if f.Word == largest && f.Value == 0 {
+				value = "under " + figure(resolution)
+			}
+			fmt.Fprintf(&b, ", %s %s mm (%s %s) at %s", f.Word, value, f.Bound, figure(f.Limit), f.Where)
 		}
 		b.WriteByte('\n')
 		for _, f := range c.Findings {
@@ -135,18 +144,15 @@ func (r Report) Write(w io.Writer) error {
 	return err
 }
 
-// figure writes a length so that a tiny one is still read as a length: 0.0000003, never 3e-07.
+// figure writes a length to four digits, plainly: 0.0000003, never 3e-07.
 func figure(v float64) string {
-	switch {
-	case v == 0:
+	if v == 0 {
 		return "0"
-	case v < 1e-9 && v > -1e-9:
-		return "0.000000001"
 	}
-	s := strconv.FormatFloat(v, 'g', 4, 64)
-	if strings.Contains(s, "e") {
-		s = strconv.FormatFloat(v, 'f', 10, 64)
-		s = strings.TrimRight(s, "0")
+	digits := 3 - int(math.Floor(math.Log10(math.Abs(v))))
+	s := strconv.FormatFloat(v, 'f', max(digits, 0), 64)
+	if strings.Contains(s, ".") {
+		s = strings.TrimRight(strings.TrimRight(s, "0"), ".")
 	}
 	return s
 }
