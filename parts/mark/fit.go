@@ -1,0 +1,322 @@
+package mark
+
+import (
+	"math"
+	"slices"
+	"strings"
+
+	"pinwright/parts/outline"
+)
+
+// Fitted is a text that has found its place on a part.
+type Fitted struct {
+	Strokes []outline.Path // in the region's coordinates
+	At      outline.Transform
+	Lines   []string // as they were broken
+	Height  float64  // of the letters, mm
+	Clear   float64  // shortest way from a stroke to a cut, mm
+}
+
+// Fit finds a place in the material of the region where the text goes with at least the way clear, mm,
+// between the box of every line and every outline of the region (exact distances, strokes lie within
+// their boxes). It takes the largest letters that fit, no higher than want and no lower than least,
+// mm; of equally large ones first those along the part's long axis. The text is never mirrored and
+// reads from below or from the right. It may be broken in two lines at a blank, or after a hyphen. Not
+// ok if nothing fits, or if the text or the region is empty.
+//
+// Plan:
+//
+//  1. Candidates for the middle of the text: the points of a grid along the long axis, each also
+//     pushed away from the cut that is nearest to it until two cuts are equally near. Sorted: nearest
+//     to the centroid first.
+//  2. A height fits if for some angle (along the long axis, then level, upright, then every 15
+//     degrees), some breaking in lines and some candidate the boxes of the lines, turned, lie in the
+//     material and keep clear. The distance of the candidate from the cuts, known beforehand, rules
+//     out most of them; box corners come next, the exact distance of the boxes last.
+//  3. If want does not fit, bisect between least and want (smaller letters fit wherever larger ones
+//     do) until the heights are 2 % apart.
+//
+// Some 2,000 candidates, 13 angles and 2 breakings; about a millisecond when the wanted height fits.
+func Fit(region outline.Region, text string, want, least, clear float64) (Fitted, bool) {
+	if text == "" || !(least > 0) || !(want >= least) || !(clear >= 0) || math.IsInf(want, 0) || len(region.Outer) < 2 {
+		return Fitted{}, false
+	}
+	s := newSearch(region, clear)
+	if len(s.places) == 0 {
+		return Fitted{}, false
+	}
+	breaks := breakings(text)
+	best, ok := s.at(breaks, want)
+	if ok {
+		return s.finish(best), true
+	}
+	if best, ok = s.at(breaks, least); !ok {
+		return Fitted{}, false
+	}
+	low, high := least, want
+	for high > low*1.02 {
+		middle := math.Sqrt(low * high)
+		if b, ok := s.at(breaks, middle); ok {
+			best, low = b, middle
+		} else {
+			high = middle
+		}
+	}
+	return s.finish(best), true
+}
+
+// breakings lists the ways to write the text: in one line, then in the two lines that are most nearly
+// of one length.
+func breakings(text string) [][]string {
+	out := [][]string{{text}}
+	least := math.Inf(1)
+	var two []string
+	for i, r := range text {
+		var a, b string
+		switch r {
+		case ' ':
+			a, b = strings.TrimSpace(text[:i]), strings.TrimSpace(text[i+1:])
+		case '-':
+			a, b = text[:i+1], text[i+1:]
+		default:
+			continue
+		}
+		if a == "" || b == "" || a == "-" {
+			continue
+		}
+		_, wa := Text(a, 1)
+		_, wb := Text(b, 1)
+		long := max(wa, wb)
+		if r == '-' {
+			long *= 1.25 // rather at a blank
+		}
+		if long < least {
+			least, two = long, []string{a, b}
+		}
+	}
+	if two != nil {
+		out = append(out, two)
+	}
+	return out
+}
+
+// place is a candidate for the middle of a text.
+type place struct {
+	at  outline.Point
+	far float64 // from the nearest cut, mm
+	off float64 // from the centroid, mm
+}
+
+type search struct {
+	region outline.Region
+	cuts   []outline.Outline
+	clear  float64
+	angles []float64
+	places []place // nearest to the centroid first
+	field  field
+}
+
+// gridSize is about how many points the grid has in the part's box.
+const gridSize = 1200
+
+func newSearch(region outline.Region, clear float64) *search {
+	s := &search{region: region, cuts: region.Outlines(), clear: clear}
+	m := region.Moments()
+	// Long axis: the direction in which the material spreads most; level for a shape without one.
+	axis := 0.0
+	if math.Hypot(2*m.Ixy, m.Iyy-m.Ixx) > 1e-6*(m.Ixx+m.Iyy) {
+		axis = 0.5 * math.Atan2(2*m.Ixy, m.Iyy-m.Ixx)
+	}
+	axis = upright(axis)
+	s.angles = append(s.angles, axis)
+	for _, degrees := range [12]float64{0, 90, 15, -15, 30, -30, 45, -45, 60, -60, 75, -75} {
+		if a := degrees * math.Pi / 180; math.Abs(a-axis) > 1e-9 {
+			s.angles = append(s.angles, a)
+		}
+	}
+	turn := outline.Place(-axis, false, outline.Point{})
+	back := turn.Inverse()
+	box := region.Outer.Transform(turn).Bounds()
+	if box.Empty() || !(box.Width()*box.Height() > 0) {
+		return s
+	}
+	pitch := math.Sqrt(box.Width() * box.Height() / gridSize)
+	s.field = newField(box, turn, turn.Apply(m.Centroid), pitch)
+	for i := range s.field.rows {
+		for k := range s.field.columns {
+			p := back.Apply(s.field.node(i, k))
+			near := s.nearest(p)
+			if region.Locate(p) != outline.Inside {
+				s.field.set(i, k, -near.Distance)
+				continue
+			}
+			s.field.set(i, k, near.Distance)
+			s.places = append(s.places, place{p, near.Distance, p.Dist(m.Centroid)})
+			if q, far := s.push(p, near, pitch); far > near.Distance {
+				s.places = append(s.places, place{q, far, q.Dist(m.Centroid)})
+			}
+		}
+	}
+	slices.SortStableFunc(s.places, func(a, b place) int {
+		switch {
+		case a.off < b.off:
+			return -1
+		case a.off > b.off:
+			return 1
+		}
+		return 0
+	})
+	return s
+}
+
+// upright turns a direction round so that text along it reads from below or from the right: more
+// than -90 and at most 90 degrees.
+func upright(a float64) float64 {
+	a = math.Mod(a, math.Pi)
+	switch {
+	case a <= -math.Pi/2+1e-9:
+		a += math.Pi
+	case a > math.Pi/2+1e-9:
+		a -= math.Pi
+	}
+	return a
+}
+
+func (s *search) nearest(p outline.Point) outline.Nearest {
+	best := outline.Nearest{Distance: math.Inf(1)}
+	for _, o := range s.cuts {
+		if n := o.Nearest(p); n.Distance < best.Distance {
+			best = n
+		}
+	}
+	return best
+}
+
+// push moves p away from its nearest cut as long as that makes room, at most one pitch.
+func (s *search) push(p outline.Point, near outline.Nearest, pitch float64) (outline.Point, float64) {
+	if near.Distance == 0 {
+		return p, 0
+	}
+	way := p.Sub(near.A).Unit()
+	best, far := p, near.Distance
+	for step := pitch; step > pitch/64; step /= 2 {
+		q := best.Add(way.Scale(step))
+		if d := s.nearest(q).Distance; d > far && s.region.Locate(q) == outline.Inside {
+			best, far = q, d
+		}
+	}
+	return best, far
+}
+
+// choice is a text in its place.
+type choice struct {
+	lines  []string
+	height float64
+	at     outline.Transform
+}
+
+// at finds a place for letters of this height.
+func (s *search) at(breaks [][]string, height float64) (choice, bool) {
+	for _, angle := range s.angles {
+		for _, lines := range breaks {
+			boxes, width, total := lineBoxes(lines, height)
+			if !(width > 0) {
+				continue
+			}
+			need := s.clear
+			if len(lines)%2 == 1 {
+				need += min(width, height) / 2
+			}
+			turn := outline.Place(angle, false, outline.Point{})
+			middle := turn.Apply(outline.Point{X: width / 2, Y: total / 2})
+			for _, p := range s.places {
+				if p.far < need {
+					continue
+				}
+				at := turn
+				at.Move = p.at.Sub(middle)
+				if s.keeps(boxes, at) {
+					return choice{lines, height, at}, true
+				}
+			}
+		}
+	}
+	return choice{}, false
+}
+
+// lineBoxes returns the box of every line as Lines lays them out, and the size of the whole.
+func lineBoxes(lines []string, height float64) (boxes []outline.Box, width, total float64) {
+	_, width, total = Lines(lines, height)
+	step := height * leading / capHeight
+	for i, l := range lines {
+		_, w := Text(l, height)
+		y := step * float64(len(lines)-1-i)
+		boxes = append(boxes, outline.Box{
+			Min: outline.Point{X: (width - w) / 2, Y: y},
+			Max: outline.Point{X: (width + w) / 2, Y: y + height},
+		})
+	}
+	return boxes, width, total
+}
+
+// keeps says whether all boxes, moved, lie in the material and clear of the cuts.
+func (s *search) keeps(boxes []outline.Box, at outline.Transform) bool {
+	for _, b := range boxes {
+		for _, p := range [4]outline.Point{b.Min, {X: b.Max.X, Y: b.Min.Y}, b.Max, {X: b.Min.X, Y: b.Max.Y}} {
+			q := at.Apply(p)
+			if s.field.bound(q) < s.clear {
+				return false
+			}
+			if s.region.Locate(q) != outline.Inside || s.nearest(q).Distance < s.clear {
+				return false
+			}
+		}
+	}
+	for _, b := range boxes {
+		frame := outline.Rectangle(b.Min, b.Max).Transform(at)
+		if len(frame) == 0 {
+			frame = outline.Polygon(at.Apply(b.Min), at.Apply(b.Max)) // a letter of no width
+		}
+		for _, o := range s.cuts {
+			// A cut wholly within the box is as bad as one that crosses it.
+			if outline.OutlineDistance(frame, o).Distance < s.clear || frame.Locate(o[0].Point) != outline.Outside {
+				return false
+			}
+		}
+	}
+	return true
+}
+
+func (s *search) finish(c choice) Fitted {
+	strokes, _, _ := Lines(c.lines, c.height)
+	f := Fitted{Lines: c.lines, Height: c.height, At: c.at, Clear: math.Inf(1)}
+	for _, p := range strokes {
+		f.Strokes = append(f.Strokes, p.Transform(c.at))
+	}
+	f.Clear = Clearance(s.region, f.Strokes)
+	return f
+}
+
+// Clearance returns the shortest way from a stroke to an outline of the region, mm; 0 if one crosses
+// an outline or lies outside the material. Infinite without strokes.
+func Clearance(region outline.Region, strokes []outline.Path) float64 {
+	least := math.Inf(1)
+	for _, p := range strokes {
+		if len(p) == 0 {
+			continue
+		}
+		if region.Locate(p[0].Point) != outline.Inside {
+			return 0
+		}
+		for _, a := range p.Segments() {
+			for _, o := range region.Outlines() {
+				for _, b := range o.Segments() {
+					if a.Bounds().Distance(b.Bounds()) < least {
+						least = min(least, outline.SegmentDistance(a, b).Distance)
+					}
+				}
+			}
+		}
+	}
+	return least
+}
