@@ -1,0 +1,3 @@
+package outline
+
+const cases = 3000
