@@ -109,7 +109,7 @@ type place struct {
 
 type search struct {
 	region outline.Region
-	cuts   []outline.Outline
+	cuts   outline.Edges
 	clear  float64
 	angles []float64
 	places []place // nearest to the centroid first
@@ -120,7 +120,7 @@ type search struct {
 const gridSize = 1200
 
 func newSearch(region outline.Region, clear float64) *search {
-	s := &search{region: region, cuts: region.Outlines(), clear: clear}
+	s := &search{region: region, cuts: outline.EdgesOf(region), clear: clear}
 	m := region.Moments()
 	// Long axis: the direction in which the material spreads most; level for a shape without one.
 	axis := 0.0
@@ -145,14 +145,14 @@ func newSearch(region outline.Region, clear float64) *search {
 	for i := range s.field.rows {
 		for k := range s.field.columns {
 			p := back.Apply(s.field.node(i, k))
-			near := s.nearest(p)
-			if region.Locate(p) != outline.Inside {
-				s.field.set(i, k, -near.Distance)
+			far := s.cuts.Depth(p)
+			s.field.set(i, k, far)
+			if far <= clear {
 				continue
 			}
-			s.field.set(i, k, near.Distance)
-			s.places = append(s.places, place{p, near.Distance, p.Dist(m.Centroid)})
-			if q, far := s.push(p, near, pitch); far > near.Distance {
+			s.places = append(s.places, place{p, far, p.Dist(m.Centroid)})
+			if q, further := s.push(p, far, pitch); further > far {
+				far = further
 				s.places = append(s.places, place{q, far, q.Dist(m.Centroid)})
 			}
 		}
@@ -182,30 +182,16 @@ func upright(a float64) float64 {
 	return a
 }
 
-func (s *search) nearest(p outline.Point) outline.Nearest {
-	best := outline.Nearest{Distance: math.Inf(1)}
-	for _, o := range s.cuts {
-		if n := o.Nearest(p); n.Distance < best.Distance {
-			best = n
-		}
-	}
-	return best
-}
-
 // push moves p away from its nearest cut as long as that makes room, at most one pitch.
-func (s *search) push(p outline.Point, near outline.Nearest, pitch float64) (outline.Point, float64) {
-	if near.Distance == 0 {
-		return p, 0
-	}
-	way := p.Sub(near.A).Unit()
-	best, far := p, near.Distance
-	for step := pitch; step > pitch/64; step /= 2 {
-		q := best.Add(way.Scale(step))
-		if d := s.nearest(q).Distance; d > far && s.region.Locate(q) == outline.Inside {
-			best, far = q, d
+func (s *search) push(p outline.Point, far, pitch float64) (outline.Point, float64) {
+	way := p.Sub(s.cuts.Nearest(p).A).Unit()
+	for step := pitch / 2; step > pitch/64; step /= 2 {
+		q := p.Add(way.Scale(step))
+		if d := s.cuts.Depth(q); d > far {
+			p, far = q, d
 		}
 	}
-	return best, far
+	return p, far
 }
 
 // choice is a text in its place.
@@ -262,12 +248,22 @@ func lineBoxes(lines []string, height float64) (boxes []outline.Box, width, tota
 // keeps says whether all boxes, moved, lie in the material and clear of the cuts.
 func (s *search) keeps(boxes []outline.Box, at outline.Transform) bool {
 	for _, b := range boxes {
-		for _, p := range [4]outline.Point{b.Min, {X: b.Max.X, Y: b.Min.Y}, b.Max, {X: b.Min.X, Y: b.Max.Y}} {
-			q := at.Apply(p)
-			if s.field.bound(q) < s.clear {
+		corners := [4]outline.Point{b.Min, {X: b.Max.X, Y: b.Min.Y}, b.Max, {X: b.Min.X, Y: b.Max.Y}}
+		for i, p := range corners {
+			corners[i] = at.Apply(p)
+			if s.field.bound(corners[i]) < s.clear {
 				return false
 			}
-			if s.region.Locate(q) != outline.Inside || s.nearest(q).Distance < s.clear {
+		}
+		// Along the middle of the box there is half a height more.
+		half := min(b.Width(), b.Height()) / 2
+		for x := b.Min.X + half; x <= b.Max.X-half; x += s.field.pitch {
+			if s.field.bound(at.Apply(outline.Point{X: x, Y: (b.Min.Y + b.Max.Y) / 2})) < s.clear+half {
+				return false
+			}
+		}
+		for _, p := range corners {
+			if s.cuts.Depth(p) < s.clear {
 				return false
 			}
 		}
@@ -277,9 +273,12 @@ func (s *search) keeps(boxes []outline.Box, at outline.Transform) bool {
 		if len(frame) == 0 {
 			frame = outline.Polygon(at.Apply(b.Min), at.Apply(b.Max)) // a letter of no width
 		}
-		for _, o := range s.cuts {
-			// A cut wholly within the box is as bad as one that crosses it.
-			if outline.OutlineDistance(frame, o).Distance < s.clear || frame.Locate(o[0].Point) != outline.Outside {
+		if s.cuts.Distance(frame).Distance < s.clear {
+			return false
+		}
+		for _, h := range s.region.Holes {
+			// A hole wholly within the box is as bad as one that crosses it.
+			if len(h) > 0 && frame.Locate(h[0].Point) != outline.Outside {
 				return false
 			}
 		}
