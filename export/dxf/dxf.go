@@ -11,7 +11,11 @@
 // tables, blocks and objects that a complete drawing has).
 package dxf
 
-import "pinwright/export"
+import (
+	"strings"
+
+	"pinwright/export"
+)
 
 // The layers. The first three are work for the beam, in the order in which a part is worked;
 // LayerEdge is the outline of the sheet, for the eye only.
@@ -22,29 +26,21 @@ const (
 	LayerEdge    = "SHEET-EDGE"
 )
 
-// LayerOf returns the layer of an operation, or "" for one that does not exist.
+// LayerOf returns the layer of an operation, its name in capitals, or "" for one that does not exist.
 func LayerOf(op export.Operation) string {
-	switch op {
-	case export.Engrave:
-		return LayerEngrave
-	case export.CutInside:
-		return LayerInside
-	case export.CutOutside:
-		return LayerOutside
+	if !op.Valid() {
+		return ""
 	}
-	return ""
+	return strings.ToUpper(op.String())
 }
 
 // OperationOf returns what the beam does on a layer; false for a layer that is not work (the edge
 // of the sheet, or a layer that is not ours).
 func OperationOf(layer string) (export.Operation, bool) {
-	switch layer {
-	case LayerEngrave:
-		return export.Engrave, true
-	case LayerInside:
-		return export.CutInside, true
-	case LayerOutside:
-		return export.CutOutside, true
+	for _, op := range export.Operations() {
+		if LayerOf(op) == layer {
+			return op, true
+		}
 	}
 	return 0, false
 }
@@ -80,11 +76,11 @@ type Options struct {
 	SheetEdge bool // also draw the edge of the sheet, on a layer that is not plotted
 }
 
-// The default colours: a blue, a green and an orange that are told apart on white and on black, and
-// grey for the edge. They carry no meaning: the layer's name does.
+// The default colours of the layers, near to the looks of the operations: a green-blue, an
+// orange-brown, a dark blue, and grey for the edge. They carry no meaning: the layer's name does.
 const (
-	DefaultEngrave = 174
-	DefaultInside  = 94
-	DefaultOutside = 34
+	DefaultEngrave = 124
+	DefaultInside  = 34
+	DefaultOutside = 174
 	DefaultEdge    = 253
 )

@@ -245,10 +245,10 @@ func TestReadSeesIntoTheModelBlock(t *testing.T) {
 
 func TestReadLayersSwitchedOff(t *testing.T) {
 	sound := string(write(t, link(), dxf.Options{}))
-	off := strings.Replace(sound, "CUT-INSIDE\n 70\n0\n 62\n94\n", "CUT-INSIDE\n 70\n0\n 62\n-94\n", 1)
+	off := strings.Replace(sound, "CUT-INSIDE\n 70\n0\n 62\n34\n", "CUT-INSIDE\n 70\n0\n 62\n-34\n", 1)
 	off = strings.Replace(off, "CUT-OUTSIDE\n 70\n0\n", "CUT-OUTSIDE\n 70\n1\n", 1)
 	d := read(t, []byte(off))
-	if !d.Layers[2].Off || d.Layers[2].Colour != 94 || !d.Layers[3].Off || d.Layers[1].Off {
+	if !d.Layers[2].Off || d.Layers[2].Colour != 34 || !d.Layers[3].Off || d.Layers[1].Off {
 		t.Errorf("%+v", d.Layers)
 	}
 }

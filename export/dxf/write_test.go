@@ -58,15 +58,18 @@ func TestWriteRefuses(t *testing.T) {
 		"coordinate not a number":      {change(func(s *export.Sheet) { s.Steps[4].Closed[1].X = math.NaN() }), dxf.Options{}, "is not a place within a kilometre"},
 		"infinite bulge":               {change(func(s *export.Sheet) { s.Steps[4].Closed[1].Bulge = math.Inf(1) }), dxf.Options{}, "bulge +Inf is not a place"},
 		"a cut that is open": {
-			change(func(s *export.Sheet) { s.Steps[2].Open = s.Steps[0].Open }), dxf.Options{},
+			change(func(s *export.Sheet) { s.Steps[2].Open = s.Steps[0].Open }),
+			dxf.Options{},
 			"step 3 (link): a cut is an outline",
 		},
 		"a cut of one point": {
-			change(func(s *export.Sheet) { s.Steps[2].Closed = s.Steps[2].Closed[:1] }), dxf.Options{},
+			change(func(s *export.Sheet) { s.Steps[2].Closed = s.Steps[2].Closed[:1] }),
+			dxf.Options{},
 			"step 3 (link): a cut is an outline of two or more points; this one has 1",
 		},
 		"engraving that is closed": {
-			change(func(s *export.Sheet) { s.Steps[0].Closed = s.Steps[2].Closed }), dxf.Options{},
+			change(func(s *export.Sheet) { s.Steps[0].Closed = s.Steps[2].Closed }),
+			dxf.Options{},
 			"step 1 (link): engraving is an open path",
 		},
 		"an operation that does not exist": {
@@ -99,6 +102,12 @@ func TestWriteReportsAFullDisc(t *testing.T) {
 
 func TestLayersAndOperations(t *testing.T) {
 	for _, op := range []export.Operation{export.Engrave, export.CutInside, export.CutOutside} {
+		want := map[export.Operation]string{
+			export.Engrave: dxf.LayerEngrave, export.CutInside: dxf.LayerInside, export.CutOutside: dxf.LayerOutside,
+		}[op]
+		if dxf.LayerOf(op) != want {
+			t.Errorf("operation %v has layer %q, want %q", op, dxf.LayerOf(op), want)
+		}
 		if back, ok := dxf.OperationOf(dxf.LayerOf(op)); !ok || back != op {
 			t.Errorf("operation %d has layer %q, which means %d", op, dxf.LayerOf(op), back)
 		}

@@ -133,8 +133,10 @@ func TestEncodeRefusesWhatIsNoNumber(t *testing.T) {
 func TestHoleAt(t *testing.T) {
 	p := manifest.Part{
 		Holes: []manifest.Hole{
-			{Name: "hub 1 of 4", Kind: "bolt", Joint: "O"}, {Name: "O", Kind: "shaft", Joint: "O"},
-			{Name: "C", Kind: "slot", Joint: "C"}, {Name: "window 1", Kind: "window"},
+			{Name: "hub 1 of 4", Kind: "bolt", Joint: "O"},
+			{Name: "O", Kind: "shaft", Joint: "O"},
+			{Name: "C", Kind: "slot", Joint: "C"},
+			{Name: "window 1", Kind: "window"},
 		},
 		Feet: []manifest.Foot{{Joint: "P"}},
 	}

@@ -1,34 +1,28 @@
 package proof
 
 import (
+	"errors"
 	"math"
 
 	"pinwright/parts/outline"
 )
 
-// crossing looks for a place where a contour meets itself, other than from one segment to the next.
-// O(n^2) boxes for n segments, of which few meet.
-func crossing(o outline.Outline) (outline.Point, bool) {
-	segments := o.Clean().Segments()
-	boxes := make([]outline.Box, len(segments))
-	for i, s := range segments {
-		boxes[i] = s.Bounds()
+// unsound says what keeps a contour from being a cut, "" when nothing does.
+func unsound(o outline.Outline) string {
+	var fault *outline.Fault
+	// Clean joins what an editing program may have split; that is no harm.
+	if !errors.As(o.Clean().Validate(), &fault) {
+		return ""
 	}
-	for i, s := range segments {
-		for j := i + 1; j < len(segments); j++ {
-			if !boxes[i].Intersects(boxes[j]) {
-				continue
-			}
-			for _, p := range s.Intersect(segments[j]) {
-				follows := j == i+1 && p.Dist(s.B) <= gapSlack
-				leads := i == 0 && j == len(segments)-1 && p.Dist(s.A) <= gapSlack
-				if !follows && !leads {
-					return p, true
-				}
-			}
-		}
+	switch fault.Kind {
+	case outline.FaultCrossing:
+		return "crosses itself " + near(fault.At)
+	case outline.FaultTouching:
+		return "touches itself " + near(fault.At)
+	case outline.FaultTooFew:
+		return "encloses nothing"
 	}
-	return outline.Point{}, false
+	return fault.Text
 }
 
 // strokeDistance is the shortest way between an engraved stroke and a cut.

@@ -150,15 +150,10 @@ func (l *ledger) contours(s *scene, d dxf.Drawing) {
 		if c.area < 0 {
 			c.path, c.area = c.path.Reverse(), -c.area
 		}
-		if !(c.area > gapSlack) {
+		if why := unsound(c.path); why != "" {
 			l.fail(contours, Finding{
-				File: s.file, Line: e.Line, What: "a cut " + around(c.box) + " that encloses nothing", Do: "take it away",
-			})
-			continue
-		}
-		if at, crosses := crossing(c.path); crosses {
-			l.fail(contours, Finding{
-				File: s.file, Line: e.Line, What: "a cut that crosses itself " + near(at), Do: "draw it without loops",
+				File: s.file, Line: e.Line, What: "a cut " + around(c.box) + " that " + why,
+				Do: "draw it as one plain loop, or take it away",
 			})
 			continue
 		}

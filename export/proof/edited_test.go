@@ -207,13 +207,13 @@ func TestEditedSheetFails(t *testing.T) {
 				o := s.Steps[frameEdge].Closed
 				o[1], o[3] = o[3], o[1]
 			},
-			[]string{"cuts closed: a cut that crosses itself near ("},
+			[]string{"cuts closed: a cut near (195.0, 106.2) that crosses itself near ("},
 		},
 		"a cut that encloses nothing": {
 			func(s *export.Sheet) {
 				s.Steps = append(s.Steps, export.Step{Op: export.CutOutside, Closed: outline.Polygon(pt(120, 130), pt(130, 130))})
 			},
-			[]string{"cuts closed: a cut near (125.0, 130.0) that encloses nothing: take it away"},
+			[]string{"cuts closed: a cut near (125.0, 130.0) that encloses nothing: draw it as one plain loop"},
 		},
 		"engraving across a hole": {
 			func(s *export.Sheet) { moved(&s.Steps[crankMark], shift(-7, 0)) },
@@ -296,7 +296,7 @@ func TestEditedTextFails(t *testing.T) {
 			replace("  8\nCUT-INSIDE\n", "  8\nholes\n"),
 			`layer "holes" says nothing to the beam (expected ENGRAVE, CUT-INSIDE or CUT-OUTSIDE, found 1 entity on it)`,
 		},
-		"a layer switched off": {replace(" 62\n94\n", " 62\n-94\n"), "layer CUT-INSIDE is switched off"},
+		"a layer switched off": {replace(" 62\n34\n", " 62\n-34\n"), "layer CUT-INSIDE is switched off"},
 		"text": {
 			replace("ENTITIES\n", "ENTITIES\n  0\nTEXT\n  8\nENGRAVE\n 10\n50.0\n 20\n5.0\n 40\n3.0\n  1\nhello\n"),
 			`TEXT on layer "ENGRAVE": not a line, arc, circle or polyline: take it away, or draw it with lines`,

@@ -171,8 +171,10 @@ func (m model) flatted(joint string, radius, flat float64) model {
 	s := shape{
 		cut: outline.Outline{{Point: corner, Bulge: far}, {Point: down}},
 		left: outline.Outline{
-			{Point: corner.Add(outline.Polar(h, angle)), Bulge: far}, {Point: down.Add(outline.Polar(h, -angle)), Bulge: bend},
-			{Point: down.Add(pt(h, 0))}, {Point: corner.Add(pt(h, 0)), Bulge: bend},
+			{Point: corner.Add(outline.Polar(h, angle)), Bulge: far},
+			{Point: down.Add(outline.Polar(h, -angle)), Bulge: bend},
+			{Point: down.Add(pt(h, 0))},
+			{Point: corner.Add(pt(h, 0)), Bulge: bend},
 		},
 	}
 	m.holes = append(m.holes[:len(m.holes):len(m.holes)], manifest.Hole{Name: joint, Kind: "shaft", Joint: joint})
