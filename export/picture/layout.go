@@ -69,7 +69,7 @@ func Layout(s export.Sheet, width, height float64) (Picture, error) {
 			}
 			p.Items = append(p.Items, Shape{
 				Closed: at.outlines(drawing.closed), Open: at.paths(drawing.open),
-				Stroke: colour(drawing.op.Look().Colour), Line: 0.15,
+				Stroke: colour(drawing.op.Look().Colour), Line: 0.15, Dash: dashOf(drawing.op),
 			})
 		}
 	}
@@ -99,11 +99,20 @@ func (p *Picture) operations(width, y, size float64) {
 	for _, op := range export.Operations() {
 		p.Items = append(p.Items, Shape{
 			Open:   []outline.Path{line(outline.Point{X: x, Y: y + size*0.3}, outline.Point{X: x + 8, Y: y + size*0.3})},
-			Stroke: colour(op.Look().Colour), Line: 0.5, Dash: op.Look().Dash,
+			Stroke: colour(op.Look().Colour), Line: 0.4, Dash: dashOf(op),
 		})
 		p.label(x+9.5, y, words[op], size, Start, false)
 		x += 9.5 + roughWidth(words[op], size) + 6
 	}
+}
+
+// dashOf tells inside cuts from outside cuts without colour. Engraved strokes are told by being open,
+// and letters in dashes could not be read.
+func dashOf(op export.Operation) []float64 {
+	if op != export.CutInside {
+		return nil
+	}
+	return []float64{0.9, 0.4}
 }
 
 func (p *Picture) label(x, y float64, text string, size float64, anchor Anchor, bold bool) {
@@ -156,9 +165,9 @@ func legendOf(parts []piece, width, size float64) names {
 }
 
 // roughWidth is about how long a text is; fonts differ, so it is on the long side.
-func roughWidth(s string, size float64) float64 { return 0.6 * size * float64(len([]rune(s))) }
+func roughWidth(s string, size float64) float64 { return 0.56 * size * float64(len([]rune(s))) }
 
-// roomiest returns a point of the material within o that is far from every cut of the part, and how
+// roomiest returns a point of the material within o that is far from every cut and mark of the part, and how
 // far: the best of a grid, refined twice round the best.
 func roomiest(o outline.Outline, part piece) (outline.Point, float64) {
 	box := o.Bounds()
@@ -191,7 +200,7 @@ func roomiest(o outline.Outline, part piece) (outline.Point, float64) {
 	return best, max(0, clear)
 }
 
-// clearance is the distance to the nearest cut, negative outside o or in a hole.
+// clearance is the distance to the nearest cut or mark, negative outside o or in a hole.
 func clearance(q outline.Point, o outline.Outline, part piece) float64 {
 	if o.Locate(q) != outline.Inside {
 		return -o.Nearest(q).Distance
@@ -203,6 +212,11 @@ func clearance(q outline.Point, o outline.Outline, part piece) float64 {
 			return -away
 		}
 		d = min(d, away)
+	}
+	for _, m := range part.marks {
+		for _, s := range m.Segments() {
+			d = min(d, s.Nearest(q).Distance)
+		}
 	}
 	return d
 }

@@ -31,7 +31,7 @@ type PieceKind int
 
 // The kinds of piece.
 const (
-	PartPiece   PieceKind = iota // hatched by its tint
+	PartPiece   PieceKind = iota // in a tint of its own
 	ShankPiece                   // the bolt or shaft itself: drawn behind the others
 	HeadPiece                    // head of a bolt
 	NutPiece                     // nut

@@ -48,7 +48,7 @@ func Sheet() export.Sheet {
 	mark("left-1.crank", 200, 128)
 	add(export.CutInside, "left-1.crank", outline.CircleHole(outline.Point{X: 215, Y: 130}, 27))
 	add(export.CutOutside, "left-1.crank", outline.Circle(outline.Point{X: 215, Y: 130}, 42))
-	add(export.CutInside, "right-1.hub", outline.CircleHole(outline.Point{X: 215, Y: 130}, 3.2))
+	add(export.CutInside, "right-1.hub", outline.CircleHole(outline.Point{X: 205, Y: 130}, 3.2))
 	add(export.CutOutside, "right-1.hub", Bar(205, 130, 20, 14, math.Pi/6))
 	p := func(x, y, bulge float64) outline.Vertex {
 		return outline.Vertex{Point: outline.Point{X: x, Y: y}, Bulge: bulge}
