@@ -210,125 +210,103 @@ func (c *cycleTable) columnAt(joint string) spot {
 
 // lengthsFromCycle recovers the lengths of a link from the positions of its pins.
 //
-//  1. The distance of every pair is followed through the rows; one that changes by more than the
-//     tolerance is an error with both rows.
-//  2. In every row the pins are written in a frame on the link (origin in one pin, x axis through the
-//     one farthest from it); the mean over the rows is the link's form. The lengths are the distances
-//     of these mean places, so they agree with each other however the table was rounded.
-//  3. A pin that changes sides (a flipped assembly in the table) shows as a place that moves.
+//  1. The distance of every pair of pins is followed through the rows; one that changes by more than
+//     the tolerance is an error with both rows.
+//  2. A pin that lies on the other side of the link than in the first row (a flipped assembly) is an
+//     error: distances do not show it.
+//  3. Lengths that fix the link's shape and are stated in the job stay as stated and must be those of
+//     the table within the tolerance; else the lengths are those of the table.
 //
-// Lengths that the job states itself stay as stated and must be those of the table within the
-// tolerance. Time: rows times pairs of pins.
+// Time: rows times pairs of pins.
 func (r *reader) lengthsFromCycle(dr *draft, c *cycleTable) {
-	paths := make([][]linkage.Point, len(dr.pins))
-	for i, p := range dr.pins {
-		if c.wrong[p] {
+	samples := make([][]linkage.Point, len(c.rows))
+	for _, p := range dr.pins {
+		path := c.path(p)
+		if path == nil {
+			path = r.fixedPath(p, len(c.rows))
+		}
+		switch {
+		case c.wrong[p]:
 			dr.sound = false
 			return
-		}
-		paths[i] = c.path(p)
-		if paths[i] != nil {
-			continue
-		}
-		if fixed := r.fixedPath(p, len(c.rows)); fixed != nil {
-			paths[i] = fixed
-			continue
-		}
-		if len(dr.lengths) == 0 {
+		case path == nil && len(dr.lengths) == 0:
 			r.fail(dr.at, "add columns "+p+".x and "+p+".y to "+short(c.file)+", or state the lengths of the link", "link %s: the cycle has no joint %s", dr.name, p)
 			dr.sound = false
+			return
+		case path == nil:
+			return
 		}
+		for row := range samples {
+			samples[row] = append(samples[row], path[row])
+		}
+	}
+	link := []linkage.Link{{Name: dr.name, Pins: dr.pins}}
+	all, err := linkage.Distances(link, dr.pins, samples)
+	if err != nil {
+		r.fail(dr.at, "", "%v", err)
+		dr.sound = false
 		return
 	}
+	for _, d := range all {
+		if d.Max-d.Min > c.tolerance {
+			r.fail(c.rows[d.MaxAt], "are these joints on one link? If so, correct the table, or state a larger tolerance",
+				"link %s stretches: %s-%s is %s mm at %s and %s mm at %s, %s mm apart (tolerance %s mm)",
+				dr.name, d.A, d.B, figure(d.Min), c.row(d.MinAt), figure(d.Max), c.row(d.MaxAt), figure(d.Max-d.Min), figure(c.tolerance))
+			dr.sound = false
+		} else if d.Mean == 0 {
+			r.fail(c.columnAt(d.B), "make them one joint", "link %s: joints %s and %s are at the same place", dr.name, d.A, d.B)
+			dr.sound = false
+		}
+	}
+	if !dr.sound || r.flips(dr, c, samples) {
+		dr.sound = false
+		return
+	}
+	for _, d := range all {
+		for _, s := range dr.lengths {
+			if s.joins(d.A, d.B) && math.Abs(s.mm-d.Mean) > c.tolerance {
+				r.fail(s.at, "keep the right one", "link %s: %s is %s mm here, but %s mm in the cycle %s (tolerance %s mm)", dr.name, s.pair(), figure(s.mm), figure(d.Mean), short(c.file), figure(c.tolerance))
+			}
+		}
+	}
+	if len(dr.lengths) > 0 && len(missingPairs(dr.pins, dr.lengths)) == 0 {
+		return
+	}
+	recovered, err := linkage.Recover(link, dr.pins, samples, c.tolerance)
+	if err != nil {
+		r.fail(dr.at, "", "%v", err)
+		dr.sound = false
+		return
+	}
+	dr.lengths = nil // a few stated ones do not fix the shape: that is the table's
+	for _, l := range recovered[0].Lengths {
+		r.state(dr, stated{l.A, l.B, l.MM, c.rows[0], "the cycle"})
+	}
+}
+
+// flips reports a pin that changes sides.
+func (r *reader) flips(dr *draft, c *cycleTable, samples [][]linkage.Point) bool {
+	first := samples[0]
 	base, far := 0, 1
-	for i := range paths {
+	for i := range first {
 		for k := range i {
-			if distance(paths[k][0], paths[i][0]) > distance(paths[base][0], paths[far][0]) {
+			if distance(first[k], first[i]) > distance(first[base], first[far]) {
 				base, far = k, i
 			}
-			r.stretch(dr, c, paths, k, i)
 		}
 	}
-	if !dr.sound {
-		return
-	}
-	form := make([]linkage.Point, len(paths))
-	for row := range c.rows {
-		for i := range paths {
-			p := inFrame(paths[base][row], paths[far][row], paths[i][row])
-			form[i].X += p.X / float64(len(c.rows))
-			form[i].Y += p.Y / float64(len(c.rows))
-		}
-	}
-	for row := range c.rows {
-		for i := range paths {
-			p := inFrame(paths[base][row], paths[far][row], paths[i][row])
-			// A needle of a triangle turns a small error of length into a large one of height.
-			if first := inFrame(paths[base][0], paths[far][0], paths[i][0]); math.Abs(p.Y-first.Y) > math.Max(c.tolerance, math.Sqrt(c.tolerance*distance(form[base], form[far]))) {
+	// A needle of a triangle turns a small error of length into a large one of height.
+	enough := math.Max(c.tolerance, math.Sqrt(c.tolerance*distance(first[base], first[far])))
+	for row, now := range samples {
+		for i := range now {
+			was, is := inFrame(first[base], first[far], first[i]), inFrame(now[base], now[far], now[i])
+			if math.Abs(is.Y-was.Y) > 2*enough {
 				r.fail(c.rows[row], "export one assembly of the linkage", "link %s: pin %s changes sides at %s", dr.name, dr.pins[i], c.row(row))
-				dr.sound = false
-				return
+				return true
 			}
 		}
 	}
-	given := slices.Clone(dr.lengths)
-	if len(given) > 0 && len(missingPairs(dr.pins, given)) > 0 {
-		given = nil // a few lengths only: they are checked, the form is the table's
-		kept := dr.lengths
-		dr.lengths = nil
-		defer func() { r.agree(dr, c, kept) }()
-	}
-	for i := range paths {
-		for k := range i {
-			d := distance(form[k], form[i])
-			if given == nil {
-				if d == 0 {
-					r.fail(c.columnAt(dr.pins[i]), "make them one joint", "link %s: joints %s and %s are at the same place", dr.name, dr.pins[k], dr.pins[i])
-					dr.sound = false
-					return
-				}
-				r.state(dr, stated{dr.pins[k], dr.pins[i], d, c.rows[0], "the cycle"})
-				continue
-			}
-			r.agreeOne(dr, c, given, dr.pins[k], dr.pins[i], d)
-		}
-	}
-}
-
-// agree checks lengths of the job against those of the table.
-func (r *reader) agree(dr *draft, c *cycleTable, kept []stated) {
-	for _, s := range dr.lengths {
-		r.agreeOne(dr, c, kept, s.a, s.b, s.mm)
-	}
-}
-
-func (r *reader) agreeOne(dr *draft, c *cycleTable, kept []stated, a, b string, mm float64) {
-	for _, s := range kept {
-		if s.joins(a, b) && math.Abs(s.mm-mm) > c.tolerance {
-			r.fail(s.at, "keep the right one", "link %s: %s is %s mm here, but %s mm in the cycle %s (tolerance %s mm)", dr.name, s.pair(), figure(s.mm), figure(mm), short(c.file), figure(c.tolerance))
-		}
-	}
-}
-
-// stretch reports a pair of pins whose distance changes.
-func (r *reader) stretch(dr *draft, c *cycleTable, paths [][]linkage.Point, a, b int) {
-	least, most := 0, 0
-	for row := range c.rows {
-		d := distance(paths[a][row], paths[b][row])
-		if d < distance(paths[a][least], paths[b][least]) {
-			least = row
-		}
-		if d > distance(paths[a][most], paths[b][most]) {
-			most = row
-		}
-	}
-	low, high := distance(paths[a][least], paths[b][least]), distance(paths[a][most], paths[b][most])
-	if high-low > c.tolerance {
-		r.fail(c.rows[most], "are these joints on one link? If so, correct the table, or state a larger tolerance",
-			"link %s stretches: %s-%s is %s mm at %s and %s mm at %s, %s mm apart (tolerance %s mm)",
-			dr.name, dr.pins[a], dr.pins[b], figure(low), c.row(least), figure(high), c.row(most), figure(high-low), figure(c.tolerance))
-		dr.sound = false
-	}
+	return false
 }
 
 // fixedPath stands still at a ground pivot that the table leaves out; nil for a moving joint.

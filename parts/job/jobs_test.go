@@ -152,7 +152,7 @@ func TestDefaults(t *testing.T) {
 	if s := mustRead(t, "watt-table.yaml").Stock[0]; s.Measured != s.Thickness || s.Web != s.Thickness {
 		t.Errorf("stock: %+v", s)
 	}
-	if p := j.Pins[0]; !reflect.DeepEqual(p, Pin{Joint: "O", Kind: BoltPin, Bolt: "M4", Fit: "medium", Head: "socket", Nut: "lock", Washer: "normal"}) {
+	if p := j.Pins[1]; !reflect.DeepEqual(p, Pin{Joint: "C", Kind: BoltPin, Bolt: "M4", Fit: "medium", Head: "socket", Nut: "lock", Washer: "normal"}) {
 		t.Errorf("pin: %+v", p)
 	}
 	shapes := map[string]Shape{}
@@ -252,9 +252,9 @@ func TestAt(t *testing.T) {
 	if e.Error() != want {
 		t.Errorf("got\n%s\nwant\n%s", e.Error(), want)
 	}
-	demo := mustRead(t, "demo.yaml")
-	if got := demo.At("copies.right-2.phase").Line; got != 50 {
-		t.Errorf("copy on line %d", got)
+	jansen := mustRead(t, "jansen.yaml")
+	if got, want := jansen.At("copies.right"), jansen.At("copies.1"); got != want || got.Line == 1 {
+		t.Errorf("copy at %v, want %v", got, want)
 	}
 	if got := (Job{}).At("job"); got != (Position{}) {
 		t.Errorf("zero job: %v", got)

@@ -12,7 +12,7 @@ import (
 // between its pins, agree, close triangles and fix its shape.
 func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable, tablesSound bool) {
 	v, where := dr.v, "link "+dr.name
-	broken := v.get("length") != nil && !v.get("length").ok() || v.get("lengths") != nil && !v.get("lengths").ok()
+	broken := v.get("length") != nil && !v.get("length").ok() || v.has("lengths") && !v.get("lengths").isWhole()
 	ways := 0
 	for _, k := range []string{"length", "lengths", "at"} {
 		if v.has(k) {

@@ -56,7 +56,7 @@ func (r *reader) linkage(v *value, d defaults, j *Job) {
 	for i := range joints {
 		names = append(names, joints[i].Name)
 	}
-	pinsSound := tableSound && (v.get("cycle") == nil || cyc != nil) && v.get("links").ok() && v.get("joints").ok()
+	pinsSound := tableSound && (v.get("cycle") == nil || cyc != nil) && v.get("links").isWhole() && v.get("joints").isWhole()
 	for i := range drafts {
 		dr := &drafts[i]
 		r.pinsOf(dr, names, rows, tableSound)
@@ -249,7 +249,7 @@ func (r *reader) unused(v *value, joints []linkage.Joint, drafts []draft, cyc *c
 // drive finds the one driven link.
 func (r *reader) drive(links *value, drafts []draft, joints []linkage.Joint, j *Job) {
 	var driven *draft
-	allSound := links.ok()
+	allSound := links.isWhole()
 	for i := range drafts {
 		dr := &drafts[i]
 		d := dr.v.get("drive")

@@ -50,7 +50,7 @@ func (r *reader) pins(v *value, top spot, j *Job) []Pin {
 		}
 		out = append(out, r.pin(joint.Name, own[joint.Name], standard, links, at, j))
 	}
-	if len(without) > 0 {
+	if len(without) > 0 && (v == nil || v.isWhole()) {
 		at := top
 		if v != nil {
 			at = v.at

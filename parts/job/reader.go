@@ -421,6 +421,10 @@ func (r *reader) unknownKey(name string, f *form, where string, at spot, n, besi
 		r.fail(at, "put a space after the colon: "+name[:colon]+": "+short(name[colon+1:]), "unknown key %s in %s", short(name), where)
 		return &key{name: name[:colon], form: form{kind: passedOver}}
 	}
+	if gap := strings.IndexByte(name, ' '); gap > 0 && f.find(name[:gap]) != nil && beside.Kind == yaml.ScalarNode && beside.Value == "" {
+		r.fail(at, "put a colon after "+name[:gap]+": "+name[:gap]+": "+short(strings.TrimSpace(name[gap:])), "unknown key %s in %s", short(name), where)
+		return &key{name: name[:gap], form: form{kind: passedOver}}
+	}
 	var free []string // keys that are not used yet are meant more probably
 	for _, k := range f.names() {
 		if !hasKey(n, k) {
@@ -465,10 +469,12 @@ func (r *reader) named(n *yaml.Node, f *form, v *value, what string) {
 	for i := 0; i+1 < len(n.Content); i += 2 {
 		k, at := n.Content[i], r.spotOf(n.Content[i])
 		if !r.plainKey(k, at) {
+			v.torn = true
 			continue
 		}
 		if colon := strings.IndexByte(k.Value, ':'); colon > 0 && f.rule.form.MatchString(k.Value[:colon]) {
 			r.fail(at, "put a space after the colon: "+k.Value[:colon]+": "+short(k.Value[colon+1:]), "%s: %s can't be %s", what, short(k.Value), f.rule.noun)
+			v.torn = true
 			continue
 		}
 		noun := f.item.noun

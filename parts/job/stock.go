@@ -26,6 +26,8 @@ func (r *reader) defaults(v *value) defaults {
 			names = append(names, e.name)
 		}
 		out.stock, out.stockAsked = r.known(d.get("stock"), names, "stock", "defaults"), true
+	case d != nil && !d.isWhole():
+		out.stockAsked = true // it may be in what could not be read
 	case len(stocks) == 1:
 		out.stock, out.stockAsked = stocks[0].name, true
 	}

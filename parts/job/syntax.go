@@ -62,9 +62,9 @@ func explain(s *source, cause error) Error {
 		_, _, err := decode([]byte(strings.Join(s.lines[:ends[i]], "\n") + "\n"))
 		return err != nil
 	})
-	line := len(s.lines)
+	line, last := len(s.lines), len(s.lines)
 	if first < len(ends) {
-		line = ends[first]
+		line, last = ends[first], ends[first]
 		from := 1
 		if first > 0 {
 			from = ends[first-1] + 1
@@ -92,7 +92,7 @@ func explain(s *source, cause error) Error {
 		if m := secondColon.FindStringSubmatchIndex(text); m != nil {
 			return fault(s.at(line, m[2]+1, 1), "a second colon on the line", "put quotes round text with a colon in it, or braces round keys that stand on one line, {key: value}")
 		}
-		return fault(at, "this key does not fit the lines above it", "indent it as its neighbours are, and see that the line above is complete")
+		return fault(at, "this key does not fit the lines above it"+s.indentClash(line), "indent it as its neighbours are, and see that the line above is complete")
 	case strings.Contains(message, "could not find expected ':'"):
 		return fault(at, "a key without a colon", "write key: value")
 	case strings.Contains(message, "cannot start any token"):
@@ -101,7 +101,7 @@ func explain(s *source, cause error) Error {
 		}
 	case strings.Contains(message, "did not find expected key"), strings.Contains(message, "did not find expected '-' indicator"),
 		strings.Contains(message, "block sequence entries are not allowed"):
-		return fault(at, "this line does not fit the lines above it", "give keys (or dashes) that belong together the same indentation, and see that the line above is complete")
+		return fault(at, "this line does not fit the lines above it"+s.indentClash(line), "give keys (or dashes) that belong together the same indentation, and see that the line above is complete")
 	case strings.Contains(message, "unknown anchor"):
 		if i := strings.IndexByte(text, '*'); i >= 0 {
 			at = s.at(line, i+1, 1)
@@ -110,19 +110,51 @@ func explain(s *source, cause error) Error {
 	case strings.Contains(message, "exceeded max depth"):
 		return fault(at, "nested too deeply", "is it the right file?")
 	case strings.Contains(message, "did not find expected ',' or"):
-		if m := missingComma.FindStringSubmatchIndex(text); m != nil {
-			at = s.at(line, m[2]+1, m[3]-m[2])
+		for l := line; l <= last; l++ {
+			if m := missingComma.FindStringSubmatchIndex(s.line(l)); m != nil {
+				at = s.at(l, m[2]+1, m[3]-m[2])
+				break
+			}
 		}
 		return fault(at, "a comma is missing between two entries in brackets", "write [a, b] and {key: value, key: value}")
 	}
 	return fault(at, "not understood as YAML ("+message+")", "look at this line's indentation, colons and brackets")
 }
 
+// indentClash tells the indentation of a line and of the line above that it most probably should have
+// the same as: the one before it, or the last one that is indented less.
+func (s *source) indentClash(line int) string {
+	indent := func(n int) int {
+		text := s.line(n)
+		return len(text) - len(strings.TrimLeft(text, " "))
+	}
+	own, before, less := indent(line), 0, 0
+	for n := line - 1; n > 0 && less == 0; n-- {
+		if text := strings.TrimSpace(s.line(n)); text == "" || text[0] == '#' {
+			continue
+		}
+		if before == 0 {
+			before = n
+		}
+		if indent(n) <= own {
+			less = n
+		}
+	}
+	if less == 0 || indent(less) == own {
+		return ""
+	}
+	other := less
+	if off := indent(before) - own; off > 0 && off <= own-indent(less) {
+		other = before
+	}
+	return fmt.Sprintf(": it is indented by %d, line %d by %d", own, other, indent(other))
+}
+
 var (
 	linePrefix   = regexp.MustCompile(`^line [0-9]+: `)
 	secondColon  = regexp.MustCompile(`:\s[^#"']*?(:)(?:\s|$)`)
 	tightColon   = regexp.MustCompile(`[A-Za-z_][A-Za-z0-9_-]*(:)[A-Za-z0-9_{\["'.]`)
-	missingComma = regexp.MustCompile(`:\s+[^,\[\]{}:#]*\s([A-Za-z][A-Za-z0-9_-]*):\s`)
+	missingComma = regexp.MustCompile(`(?::\s+[^,\[\]{}:#]*\s|[\]}]\s+)([A-Za-z][A-Za-z0-9_-]*):\s`)
 )
 
 // balance is what follow finds: the first bracket or quote without its match, and the lines at whose

@@ -16,7 +16,7 @@ type value struct {
 	entries []entry // aTable, aNamed: in the order of the file
 	items   []*value
 	sound   bool
-	torn    bool // aTable: keys are hidden in something that was refused, so none counts as missing
+	torn    bool // aTable, aNamed: entries are hidden in something refused, so none counts as missing
 }
 
 // entry is a key or a name with its value.
@@ -42,6 +42,9 @@ func (v *value) get(name string) *value {
 func (v *value) has(name string) bool { return v.get(name) != nil }
 
 func (v *value) ok() bool { return v != nil && v.sound }
+
+// isWhole tells whether the value is sound and all its entries could be read as entries.
+func (v *value) isWhole() bool { return v.ok() && !v.torn }
 
 func (v *value) numberOr(fallback float64) float64 {
 	if !v.ok() {
