@@ -88,15 +88,21 @@ func (f *face) show(s string) string {
 	return b.String()
 }
 
-// embed fills object at with the font, cut down to the glyphs that are used: a composite font whose
-// character codes are the glyph numbers, with a map back to Unicode so that text can be searched
-// and copied (ISO 32000-1, 9.7 and 9.10.3).
-func (f *face) embed(d *document, at ref) error {
+// glyphs returns the glyphs that are used, in the order of their numbers.
+func (f *face) glyphs() []sfnt.GlyphIndex {
 	glyphs := make([]sfnt.GlyphIndex, 0, len(f.used))
 	for g := range f.used {
 		glyphs = append(glyphs, g)
 	}
 	sort.Slice(glyphs, func(i, j int) bool { return glyphs[i] < glyphs[j] })
+	return glyphs
+}
+
+// embed fills object at with the font, cut down to the glyphs that are used: a composite font whose
+// character codes are the glyph numbers, with a map back to Unicode so that text can be searched
+// and copied (ISO 32000-1, 9.7 and 9.10.3).
+func (f *face) embed(d *document, at ref) error {
+	glyphs := f.glyphs()
 	data, head, err := subset(f.data, glyphs)
 	if err != nil {
 		return fmt.Errorf("font %s: %w", f.name, err)
