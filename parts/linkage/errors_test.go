@@ -169,3 +169,27 @@ func TestAmbiguity(t *testing.T) {
 		t.Error(s)
 	}
 }
+
+// TestNearMustDecide: a near place about half-way between two assemblies does not say which.
+func TestNearMustDecide(t *testing.T) {
+	for _, c := range []struct {
+		y         float64
+		ambiguous bool
+	}{{5, true}, {40, false}} {
+		l, _ := load(t, "fourbar.json")
+		for i := range l.Joints {
+			l.Joints[i].Near = nil
+		}
+		l.Joints[3].Near = pt(137, c.y) // the assemblies have B at (137, 71) and (137, -71)
+		m, err := New(l)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if got := m.Ambiguity() != nil; got != c.ambiguous {
+			t.Errorf("near at y = %g: ambiguity %v, want %v", c.y, m.Ambiguity(), c.ambiguous)
+		}
+		if b := m.start.p[3]; b.Y < 0 {
+			t.Errorf("near at y = %g: took %v", c.y, b)
+		}
+	}
+}

@@ -285,7 +285,7 @@ func firstBad(margin func(float64) (float64, error), a, b float64) (float64, err
 	if err != nil {
 		return y, err
 	}
-	for range 6 {
+	for range 24 {
 		if fx < fy {
 			hi, y, fy = y, x, fx
 			x = hi - golden*(hi-lo)

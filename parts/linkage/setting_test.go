@@ -1,6 +1,7 @@
 package linkage
 
 import (
+	"errors"
 	"math"
 	"strings"
 	"testing"
@@ -97,6 +98,23 @@ func TestGapInRange(t *testing.T) {
 	_, err := Analyse(l, Options{Settings: 2, Steps: 36})
 	if err == nil || !strings.Contains(err.Error(), "pivot D works only from (100, 0) to (80,") {
 		t.Errorf("got %v", err)
+	}
+}
+
+// TestNarrowGapInRange: the range dips below the shortest ground over a fortieth of its length.
+func TestNarrowGapInRange(t *testing.T) {
+	l, _ := load(t, "fourbar.json")
+	l.Joints[1].Ground = &Ground{At: Point{X: 79.99, Y: 70}, Range: &Range{From: Point{X: 79.99, Y: -50}, To: Point{X: 79.99, Y: 70}}}
+	l.Joints[3].Near, l.Joints[4].Near = nil, nil
+	r, err := Analyse(l, Options{Settings: 2, Steps: 36})
+	var e *RangeError
+	if !errors.As(err, &e) {
+		t.Fatalf("got %v", err)
+	}
+	near(t, "lower end that works", e.A.Y, math.Sqrt(80*80-79.99*79.99), 1e-3)
+	near(t, "upper end", e.B.Y, 70, 1e-9)
+	if len(r.Settings) != 2 || r.Settings[0].Err != nil || r.Settings[1].Err != nil {
+		t.Errorf("settings %+v: both ends work", r.Settings)
 	}
 }
 

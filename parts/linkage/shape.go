@@ -6,12 +6,28 @@ import (
 	"strings"
 )
 
-// straight is how far three lengths may be from lying on one line, mm, and still be taken as a
-// straight link. Lengths typed with three decimals (33.333 + 33.333 = 66.667) must not give a bulge:
-// one thousandth of slack would push the middle pin a fifth of a millimetre sideways. It is also how
-// far a redundant length may be from what the others give, and equals the accuracy that is promised
-// for centre distances.
-const straight = 0.001 + 1e-9
+// agrees is how far a redundant length may be from what the others give, mm: the accuracy that is
+// promised for centre distances.
+const agrees = 0.001 + 1e-9
+
+// straightWithin is how far three lengths may be from lying on one line, mm, and still mean a straight
+// link: one and a half units of their last decimal, at most a thousandth. Lengths typed with three
+// decimals (33.333 + 33.333 = 66.667) must not give a bulge, for a thousandth of slack would push the
+// middle pin a fifth of a millimetre sideways; lengths with all their digits mean what they say.
+func straightWithin(lengths ...float64) float64 {
+	decimals := 0
+	for _, x := range lengths {
+		scale := math.Pow10(decimals)
+		for decimals < 9 && math.Abs(x*scale-math.Round(x*scale)) > 1e-5 {
+			decimals++
+			scale *= 10
+		}
+	}
+	return math.Min(agrees, 1.5*math.Pow10(-decimals))
+}
+
+// apart is the least distance of two pins of a link, mm.
+const apart = 1e-3
 
 // shapes returns every rigid shape that the lengths of a link allow, as local points in the order of
 // the pins: first pin at the origin, second on the positive x axis. Mirror images are separate
@@ -72,7 +88,11 @@ func shapes(l Link) ([][]Point, error) {
 	for i := range found {
 		found[i] = inFrame(found[i])
 	}
-	return distinctShapes(found), nil
+	found = distinctShapes(found)
+	if len(found) == 0 {
+		return nil, fmt.Errorf("link %s: its lengths put two pins into one place: make them one joint", l.Name)
+	}
+	return found, nil
 }
 
 // placingOrder lists the pins so that each after the second has two given lengths to earlier ones.
@@ -139,6 +159,7 @@ func placePin(pts []Point, placed []int, pin int, d [][]float64, name func(i, j 
 	}
 	o1, o2 := (long+1)%3, (long+2)%3
 	slack := sides[o1] + sides[o2] - sides[long]
+	straight := straightWithin(ra, rb, d[a][b])
 	if slack < -straight {
 		return nil, fmt.Errorf("lengths %s %s, %s %s and %s %s make no triangle: %s is %s longer than the other two together: shorten it or lengthen them",
 			names[0], millimetres(sides[0]), names[1], millimetres(sides[1]), names[2], millimetres(sides[2]),
@@ -175,7 +196,7 @@ func placePin(pts []Point, placed []int, pin int, d [][]float64, name func(i, j 
 				off, w, v = e, m, dist(p, pts[m])
 			}
 		}
-		if off <= straight {
+		if off <= agrees {
 			fit = append(fit, p)
 		}
 		if off < worst {
@@ -206,10 +227,18 @@ func inFrame(pts []Point) []Point {
 	return out
 }
 
+// distinctShapes leaves out repeated shapes and those that put two pins into one place.
 func distinctShapes(all [][]Point) [][]Point {
 	var out [][]Point
 next:
 	for _, s := range all {
+		for i := range s {
+			for j := range i {
+				if dist(s[i], s[j]) < apart {
+					continue next
+				}
+			}
+		}
 		for _, t := range out {
 			same := true
 			for i := range s {
