@@ -6,6 +6,7 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"slices"
 	"testing"
 
 	"pinwright/export"
@@ -166,6 +167,47 @@ func agree(t *testing.T, steps []export.Step, seen []ezEntity) {
 		for j, v := range vertices {
 			if e.Points[j] != [2]float64{v.X, v.Y} || (e.Type == "LWPOLYLINE" && (closed || j+1 < len(vertices)) && e.Bulges[j] != v.Bulge) {
 				t.Errorf("entity %d vertex %d: %v, want %v", i, j, e.Points[j], v)
+			}
+		}
+	}
+}
+
+// resaveScript opens a drawing and saves it again as another version.
+const resaveScript = `
+import sys, ezdxf
+doc = ezdxf.readfile(sys.argv[1])
+doc.dxfversion = sys.argv[3]
+doc.saveas(sys.argv[2])
+`
+
+// A drawing that somebody opened and saved again in another program, and another version, reads the
+// same: layers, order and every coordinate.
+func TestReadWhatAnotherProgramSaved(t *testing.T) {
+	python := ezdxf(t)
+	data := write(t, link(), dxf.Options{SheetEdge: true})
+	want := read(t, data)
+	dir := t.TempDir()
+	ours := filepath.Join(dir, "ours.dxf")
+	if err := os.WriteFile(ours, data, 0o600); err != nil {
+		t.Fatal(err)
+	}
+	for version, code := range map[string]string{"R2000": "AC1015", "R2007": "AC1021", "R2018": "AC1032"} {
+		theirs := filepath.Join(dir, version+".dxf")
+		if out, err := exec.Command(python, "-c", resaveScript, ours, theirs, version).CombinedOutput(); err != nil {
+			t.Fatalf("%v\n%s", err, out)
+		}
+		saved, err := os.ReadFile(theirs)
+		if err != nil {
+			t.Fatal(err)
+		}
+		got := read(t, saved)
+		if got.Version != code || got.Units != dxf.Millimetre || len(got.Others) > 0 || len(got.Entities) != len(want.Entities) {
+			t.Fatalf("%s: version %s, units %v, %d entities, others %+v", version, got.Version, got.Units, len(got.Entities), got.Others)
+		}
+		for i, w := range want.Entities {
+			g := got.Entities[i]
+			if g.Layer != w.Layer || g.Type != w.Type || !slices.Equal(g.Closed, w.Closed) || !slices.Equal(g.Open, w.Open) {
+				t.Errorf("%s: entity %d is %+v, want %+v", version, i, g, w)
 			}
 		}
 	}

@@ -29,6 +29,7 @@ func (l *ledger) compare(s *scene, part manifest.Part, index int, have []feature
 	l.openings(s, part, p, f, line)
 	l.lengths(s, part, p, f, line)
 	l.edge(s, part, "", line, part.Outside, p.measure, f)
+	l.feet(s, part, p, f, line)
 	for i, h := range part.Holes {
 		if f.pairs[i] < 0 {
 			continue
@@ -54,7 +55,7 @@ func (l *ledger) openings(s *scene, part manifest.Part, p *piece, f fit, line in
 		}
 		l.fail(holeCount, Finding{
 			File: s.file, Line: line, Part: part.Name, Hole: h.Name, What: "is missing",
-			Expected: near(f.motion.Apply(outline.Point(h.Centre)))[len("near "):], Do: "write the files anew",
+			Expected: spot(f.motion.Apply(outline.Point(h.Centre))), Do: "write the files anew",
 		})
 	}
 	for i, o := range p.holes {
@@ -108,17 +109,41 @@ func (p *piece) joint(part manifest.Part, name string, f fit) (outline.Point, bo
 		h := part.Holes[i]
 		// A round bore with a flat has its centre in its arc, and not where its area has its middle.
 		if outline.Point(h.Centre).Dist(outline.Point(h.Measure.Middle)) > limit {
-			at, _, ok := arcCentre(o.edge, f.motion.Apply(outline.Point(h.Centre)), 0.5)
+			at, _, ok := arcCentre(o.edge, f.motion.Apply(outline.Point(h.Centre)), arcReach)
 			return at, ok
 		}
 		return o.centre(), true
 	}
 	if i, ok := part.FootAt(name); ok {
-		at, _, ok := arcCentre(p.edge, f.motion.Apply(outline.Point(part.Feet[i].Centre)), 0.5)
+		at, _, ok := arcCentre(p.edge, f.motion.Apply(outline.Point(part.Feet[i].Centre)), arcReach)
 		return at, ok
 	}
 	return outline.Point{}, false
 }
+
+// feet compares the radius of every toe.
+func (l *ledger) feet(s *scene, part manifest.Part, p *piece, f fit, line int) {
+	for _, foot := range part.Feet {
+		l.count(shapes, 1)
+		at := f.motion.Apply(outline.Point(foot.Centre))
+		_, radius, ok := arcCentre(p.edge, at, arcReach)
+		if ok && math.Abs(radius-foot.Radius) <= limit {
+			continue
+		}
+		found := "no arc about its place"
+		if ok {
+			found = millimetres(radius)
+		}
+		l.fail(shapes, Finding{
+			File: s.file, Line: line, Part: part.Name, What: "the toe at " + foot.Joint + " is not as it should be " + near(at),
+			Expected: "a radius of " + millimetres(foot.Radius), Found: found, Do: "write the files anew",
+		})
+	}
+}
+
+// arcReach is how far from its place the centre of an arc is looked for, mm: farther than any error
+// worth a figure, nearer than the next arc of a part.
+const arcReach = 0.5
 
 // diameter compares a round hole with its fit.
 func (l *ledger) diameter(s *scene, part manifest.Part, h manifest.Hole, o opening, line int) {

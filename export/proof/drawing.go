@@ -216,6 +216,9 @@ func around(b outline.Box) string {
 	return near(b.Centre())
 }
 
-func near(p outline.Point) string {
-	return "near (" + strconv.FormatFloat(p.X, 'f', 1, 64) + ", " + strconv.FormatFloat(p.Y, 'f', 1, 64) + ")"
+func near(p outline.Point) string { return "near " + spot(p) }
+
+// spot is a place on the sheet to the tenth of a millimetre.
+func spot(p outline.Point) string {
+	return "(" + strconv.FormatFloat(p.X, 'f', 1, 64) + ", " + strconv.FormatFloat(p.Y, 'f', 1, 64) + ")"
 }

@@ -69,7 +69,7 @@ func (l *ledger) match(s *scene) {
 		l.count(holeCount, len(part.Holes))
 		if partner[e] < 0 {
 			l.fail(partCount, Finding{
-				File: s.file, Part: part.Name, What: "is missing", Expected: near(middle[e])[len("near "):],
+				File: s.file, Part: part.Name, What: "is missing", Expected: spot(middle[e]),
 				Do: "write the files anew",
 			})
 			continue
@@ -83,9 +83,8 @@ func (l *ledger) match(s *scene) {
 		}
 		c := s.cuts[s.parts[i].outside]
 		what := "a part " + around(c.box) + " that is not in the job"
-		for _, e := range choices[i] {
-			what = "a part " + around(c.box) + " too many, like " + s.expected[e].Name
-			break
+		if len(choices[i]) > 0 {
+			what = "a part " + around(c.box) + " too many, like " + s.expected[choices[i][0]].Name
 		}
 		l.fail(partCount, Finding{File: s.file, Line: c.line, What: what, Do: "take it away"})
 	}

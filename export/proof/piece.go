@@ -4,6 +4,7 @@ import (
 	"math"
 	"strconv"
 
+	"pinwright/export/dxf"
 	"pinwright/export/manifest"
 	"pinwright/parts/outline"
 )
@@ -67,7 +68,7 @@ func (l *ledger) finish(s *scene) {
 		if len(c.within) == 0 || s.cuts[c.within[0]].inside || s.cuts[c.within[0]].part < 0 {
 			l.fail(holeCount, Finding{
 				File: s.file, Line: c.line, What: "a hole " + around(c.box) + " that is in no part",
-				Do: "take it away, or put it on layer CUT-OUTSIDE if it is a part",
+				Do: "take it away, or put it on layer " + dxf.LayerOutside + " if it is a part",
 			})
 			continue
 		}

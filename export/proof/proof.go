@@ -24,8 +24,9 @@
 //  7. Distances on the sheet: between cuts of different parts, within a part, to the edge of the
 //     sheet, from engraving to cuts. All are exact on lines and arcs.
 //
-// Running time is O(n log n) in the number of contours where they lie side by side, and O(n m) for
-// n parts in m different shapes.
+// Running time: n contours are compared box by box, O(n^2), to see which lies in which; distances are
+// measured for neighbours only; n parts are held against m different shapes, O(n m). A sheet of a
+// thousand parts takes a fraction of a second.
 package proof
 
 import (

@@ -94,11 +94,12 @@ func TestLengthToABoreWithAFlatAndToAToe(t *testing.T) {
 	if !report.OK || report.Checks[6].Compared != 3 {
 		t.Error(printed(t, report))
 	}
-	m.lengths[0].MM, m.lengths[2].MM = 30.01, 20.01
+	m.lengths[0].MM, m.lengths[2].MM, m.feet[0].Radius = 30.01, 20.01, 9.01
 	text := printed(t, check(t, newRun(120, 120, placed{m, at}).write(t, false, nil)))
 	for _, want := range []string{
 		"crank: O-A differs from the linkage by 0.0100 mm (expected 30.0100 mm, found 30.0000 mm)",
 		"crank: A-P differs from the linkage by 0.0100 mm",
+		"crank: the toe at P is not as it should be near (41.8, 47.8) (expected a radius of 9.0100 mm, found 9.0000 mm)",
 	} {
 		if !strings.Contains(text, want) {
 			t.Errorf("no %q in\n%s", want, text)
