@@ -168,7 +168,7 @@ func (r *reader) jointsOfCycle(joints []linkage.Joint, c *cycleTable, drafts []d
 		if g := joints[i].Ground; g != nil {
 			at := c.columnAt(joints[i].Name)
 			for k, p := range path {
-				if d := math.Hypot(p.X-g.At.X, p.Y-g.At.Y); d > c.tolerance {
+				if d := p.Dist(g.At); d > c.tolerance {
 					c.wrong[joints[i].Name] = true
 					r.fail(at, "correct the ground place, or take the ground out if the joint moves", "ground joint %s: the job puts it at [%s, %s], %s of the table %s mm from there (tolerance %s mm)",
 						joints[i].Name, figure(g.At.X), figure(g.At.Y), c.row(k), figure(d), figure(c.tolerance))
@@ -290,17 +290,16 @@ func (r *reader) flips(dr *draft, c *cycleTable, samples [][]linkage.Point) bool
 	base, far := 0, 1
 	for i := range first {
 		for k := range i {
-			if distance(first[k], first[i]) > distance(first[base], first[far]) {
+			if first[k].Dist(first[i]) > first[base].Dist(first[far]) {
 				base, far = k, i
 			}
 		}
 	}
 	// A needle of a triangle turns a small error of length into a large one of height.
-	enough := math.Max(c.tolerance, math.Sqrt(c.tolerance*distance(first[base], first[far])))
+	enough := math.Max(c.tolerance, math.Sqrt(c.tolerance*first[base].Dist(first[far])))
 	for row, now := range samples {
 		for i := range now {
-			was, is := inFrame(first[base], first[far], first[i]), inFrame(now[base], now[far], now[i])
-			if math.Abs(is.Y-was.Y) > 2*enough {
+			if math.Abs(aside(now[base], now[far], now[i])-aside(first[base], first[far], first[i])) > 2*enough {
 				r.fail(c.rows[row], "export one assembly of the linkage", "link %s: pin %s changes sides at %s", dr.name, dr.pins[i], c.row(row))
 				return true
 			}
@@ -322,15 +321,5 @@ func (r *reader) fixedPath(joint string, rows int) []linkage.Point {
 	return path
 }
 
-func distance(a, b linkage.Point) float64 { return math.Hypot(b.X-a.X, b.Y-a.Y) }
-
-// inFrame writes p in the frame with its origin in a and its x axis through b.
-func inFrame(a, b, p linkage.Point) linkage.Point {
-	l := distance(a, b)
-	if l == 0 {
-		return linkage.Point{}
-	}
-	ux, uy := (b.X-a.X)/l, (b.Y-a.Y)/l
-	x, y := p.X-a.X, p.Y-a.Y
-	return linkage.Point{X: ux*x + uy*y, Y: ux*y - uy*x}
-}
+// aside is how far p lies to the left of the line from a to b, mm.
+func aside(a, b, p linkage.Point) float64 { return b.Sub(a).Unit().Cross(p.Sub(a)) }

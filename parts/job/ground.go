@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"pinwright/parts/linkage"
+	"pinwright/parts/outline"
 )
 
 // groundOf reads a pivot. One that is not sound comes back with an empty range, so that nothing is
@@ -27,19 +28,18 @@ func (r *reader) linePivot(v *value) *linkage.Ground {
 		return &linkage.Ground{Range: &linkage.Range{}}
 	}
 	a, b := pointOf(from), pointOf(to)
-	run := math.Hypot(b.X-a.X, b.Y-a.Y)
+	run := a.Dist(b)
 	if run == 0 {
 		r.fail(to.at, "give two different places, or ground: [x, y] for a fixed pivot", "from and to are the same place")
 		return &linkage.Ground{At: a, Range: &linkage.Range{From: a, To: b}}
 	}
-	at := linkage.Point{X: (a.X + b.X) / 2, Y: (a.Y + b.Y) / 2}
+	at := a.Lerp(b, 0.5)
 	if set := v.get("at"); set.ok() {
 		at = pointOf(set)
-		along := ((at.X-a.X)*(b.X-a.X) + (at.Y-a.Y)*(b.Y-a.Y)) / run
-		aside := ((at.X-a.X)*(b.Y-a.Y) - (at.Y-a.Y)*(b.X-a.X)) / run
+		along, off := at.Sub(a).Dot(b.Sub(a).Unit()), math.Abs(aside(a, b, at))
 		switch {
-		case math.Abs(aside) > onLine:
-			r.fail(set.at, "give a place between from and to, or leave at out for the middle", "at lies %s mm off the line", figure(math.Abs(aside)))
+		case off > onLine:
+			r.fail(set.at, "give a place between from and to, or leave at out for the middle", "at lies %s mm off the line", figure(off))
 		case along < -onLine || along > run+onLine:
 			r.fail(set.at, "give a place between from and to, or leave at out for the middle", "at lies %s mm beyond the end of the line", figure(math.Max(-along, along-run)))
 		}
@@ -67,9 +67,8 @@ func (r *reader) arcPivot(v *value) *linkage.Ground {
 		}
 	}
 	c := pointOf(centre)
-	s, k := math.Sincos(set)
 	return &linkage.Ground{
-		At:    linkage.Point{X: c.X + radius.number*k, Y: c.Y + radius.number*s},
+		At:    c.Add(outline.Polar(radius.number, set)),
 		Range: &linkage.Range{Centre: c, Radius: radius.number, Start: from.number, End: to.number},
 	}
 }

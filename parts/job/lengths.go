@@ -157,7 +157,7 @@ func (r *reader) lengthsFromPlaces(dr *draft) (broken bool) {
 		}
 		for _, a := range dr.pins[:i] {
 			pa, pb := places[a], places[b]
-			d := math.Hypot(pb.X-pa.X, pb.Y-pa.Y)
+			d := pa.Dist(pb)
 			if d == 0 {
 				r.fail(spots[b], "move one of them, or make them one joint", "link %s: pins %s and %s are at the same place", dr.name, a, b)
 				return true
