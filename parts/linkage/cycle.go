@@ -11,7 +11,9 @@ import (
 type Position struct {
 	Angle  float64 // of the drive, radians
 	Places []Point // by joint, in the order of Linkage.Joints, mm
-	Speeds []Point // derivative of Places by the drive angle, mm per radian
+	// Speeds is the derivative of Places by the drive angle, mm per radian. Where links lie in line
+	// exactly (a change point) it is that of 1e-5 radians before.
+	Speeds []Point
 	signs  []float64
 	dets   []float64
 }
@@ -45,8 +47,8 @@ type ChangePoint struct {
 // a full turn does not come back to its beginning, *MobilityError when a surplus link would have to
 // stretch; a setting that names a pivot which is not adjustable or a parameter outside 0 to 1.
 func (m *Mechanism) Cycle(steps int, setting Setting) (*Cycle, error) {
-	if steps < 1 || steps > 1<<24 {
-		return nil, fmt.Errorf("cycle: %d steps asked for, want 1 to %d", steps, 1<<24)
+	if steps < 1 || steps > 1<<20 {
+		return nil, fmt.Errorf("cycle: %d steps asked for, want 1 to %d", steps, 1<<20)
 	}
 	pr := m.prog.clone()
 	start, err := m.startAt(pr, setting)
@@ -252,8 +254,8 @@ func (c *Cycle) Path(joint string) []Point {
 // Mechanism returns what the cycle was solved from.
 func (c *Cycle) Mechanism() *Mechanism { return c.m }
 
-// Closure returns the largest difference between a length and the distance of its pins over all
-// positions of the cycle, mm.
+// Closure returns the largest difference between the distance of two pins in a link's shape and in
+// place, over all links and positions of the cycle, mm.
 func (c *Cycle) Closure() float64 {
 	worst := 0.0
 	for _, p := range c.Positions {

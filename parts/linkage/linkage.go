@@ -2,6 +2,12 @@
 // whole cycle, mobility, assembly, toggles, branch jumps, transmission angles and foot paths.
 //
 // Lengths are millimetres, angles radians. The package knows no thickness, no material and no file.
+//
+// New checks a Linkage, takes it apart into Assur groups and puts it together at the start of its
+// drive; Mechanism.Cycle solves it over the drive, for one setting of its adjustable pivots; a Cycle
+// gives places, speeds, placements of links, bounds between positions, paths, transmission angles,
+// toggles and sensitivities. Analyse does all of that once and returns a Report. Recover finds
+// lengths in a table of joint places.
 package linkage
 
 import "pinwright/parts/outline"

@@ -97,5 +97,15 @@ func cycleOf(t testing.TB, l Linkage, steps int) *Cycle {
 	if x := c.Closure(); x > 1e-10 { // design: loop closure at every drive step
 		t.Errorf("closure %g mm, want 1e-10", x)
 	}
+	for _, p := range c.Positions {
+		for _, k := range l.Links {
+			for _, g := range k.Lengths {
+				a, b := p.Places[m.joint[g.A]], p.Places[m.joint[g.B]]
+				if e := math.Abs(dist(a, b) - g.MM); e > 1e-10 {
+					t.Fatalf("at %g deg %s-%s is %g mm off its length", deg(p.Angle), g.A, g.B, e)
+				}
+			}
+		}
+	}
 	return c
 }

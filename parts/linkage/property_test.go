@@ -177,6 +177,34 @@ func mirrored(l Linkage) Linkage {
 	return m
 }
 
+// TestBellCrank: a driven link with an arm off its line; the near place of the arm's pin says to which
+// side it stands.
+func TestBellCrank(t *testing.T) {
+	for _, side := range []float64{1, -1} {
+		l := Linkage{
+			Joints: []Joint{
+				{Name: "O", Ground: ground(0, 0)}, {Name: "D", Ground: ground(60, 0)}, {Name: "E", Ground: ground(0, 70*side)},
+				{Name: "A"}, {Name: "K", Near: pt(0, 18*side)}, {Name: "B", Near: pt(60, 40)}, {Name: "C", Near: pt(40, 70*side)},
+			},
+			Links: []Link{
+				tri("crank", "O", "A", "K", 20, math.Hypot(20, 15), 15),
+				bar2("ab", "A", "B", 55), bar2("db", "D", "B", 45), bar2("kc", "K", "C", 60), bar2("ec", "E", "C", 40),
+			},
+			Drive: Drive{Link: "crank", From: 0, To: 2 * math.Pi, Full: true},
+		}
+		c := cycleOf(t, l, 60)
+		for _, p := range c.Positions {
+			want := Point{X: -15 * side * math.Sin(p.Angle), Y: 15 * side * math.Cos(p.Angle)}
+			if d := dist(p.Places[4], want); d > 1e-12 {
+				t.Fatalf("side %g at %g deg: the arm is at %v, want %v", side, deg(p.Angle), p.Places[4], want)
+			}
+			if w := c.m.Turn("crank", p); math.Abs(w-1) > 1e-12 {
+				t.Fatalf("the crank turns at %g, want 1", w)
+			}
+		}
+	}
+}
+
 // TestOrderDoesNotMatter: naming joints and links in another order gives the same motion.
 func TestOrderDoesNotMatter(t *testing.T) {
 	l, _ := load(t, "jansen.json")

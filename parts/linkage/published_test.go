@@ -256,6 +256,23 @@ func TestPeaucellierLine(t *testing.T) {
 	near(t, "end of the drive", e.Angle, math.Acos(50*50/(2*30.0*30)-1), 1e-6) // |OA|^2 = 2 r^2 (1 + cos)
 }
 
+// BenchmarkCycleEightBarLeg is what a caller pays for a stored turn of 3600 positions.
+func BenchmarkCycleEightBarLeg(b *testing.B) {
+	l, _ := load(b, "jansen.json")
+	m, err := New(l)
+	if err != nil {
+		b.Fatal(err)
+	}
+	b.ReportAllocs()
+	for range b.N {
+		if _, err := m.Cycle(3600, nil); err != nil {
+			b.Fatal(err)
+		}
+	}
+	b.ReportMetric(float64(b.N*3600)/b.Elapsed().Seconds(), "steps/s")
+}
+
+// BenchmarkEightBarLeg is the solver alone, places and speeds: the design asks for 500000 steps/s.
 func BenchmarkEightBarLeg(b *testing.B) {
 	l, _ := load(b, "jansen.json")
 	m, err := New(l)
