@@ -183,8 +183,13 @@ func TestBellCrank(t *testing.T) {
 	for _, side := range []float64{1, -1} {
 		l := Linkage{
 			Joints: []Joint{
-				{Name: "O", Ground: ground(0, 0)}, {Name: "D", Ground: ground(60, 0)}, {Name: "E", Ground: ground(0, 70*side)},
-				{Name: "A"}, {Name: "K", Near: pt(0, 18*side)}, {Name: "B", Near: pt(60, 40)}, {Name: "C", Near: pt(40, 70*side)},
+				{Name: "O", Ground: ground(0, 0)},
+				{Name: "D", Ground: ground(60, 0)},
+				{Name: "E", Ground: ground(0, 70*side)},
+				{Name: "A"},
+				{Name: "K", Near: pt(0, 18*side)},
+				{Name: "B", Near: pt(60, 40)},
+				{Name: "C", Near: pt(40, 70*side)},
 			},
 			Links: []Link{
 				tri("crank", "O", "A", "K", 20, math.Hypot(20, 15), 15),
