@@ -1,7 +1,6 @@
 package job
 
 import (
-	"math"
 	"slices"
 
 	"pinwright/parts/linkage"
@@ -84,7 +83,7 @@ func (r *reader) linkage(v *value, d defaults, j *Job) {
 		j.Linkage.Trace = append(j.Linkage.Trace, name)
 	}
 	for i := range drafts {
-		j.Links = append(j.Links, r.build1(&drafts[i], drafts, d, j))
+		j.Links = append(j.Links, r.rules(&drafts[i], drafts, d, j))
 	}
 	r.planeClashes(drafts, j)
 }
@@ -301,8 +300,8 @@ func (r *reader) drive(links *value, drafts []draft, joints []linkage.Joint, j *
 	}
 }
 
-// build1 reads how a link is built.
-func (r *reader) build1(dr *draft, drafts []draft, d defaults, j *Job) Link {
+// rules reads how a link is built.
+func (r *reader) rules(dr *draft, drafts []draft, d defaults, j *Job) Link {
 	v := dr.v
 	where := "link " + dr.name
 	l := Link{
@@ -333,85 +332,6 @@ func (r *reader) build1(dr *draft, drafts []draft, d defaults, j *Job) Link {
 	l.Foot = r.foot(dr, drafts)
 	l.Bores = r.bores(dr)
 	return l
-}
-
-// foot reads the toe.
-func (r *reader) foot(dr *draft, drafts []draft) *Foot {
-	v := dr.v.get("foot")
-	if !v.ok() {
-		return nil
-	}
-	f := &Foot{Radius: v.get("radius").numberOr(0), Pen: v.get("pen").numberOr(0)}
-	if dr.sound {
-		f.At = r.known(v.get("at"), dr.pins, "pin", "foot of link "+dr.name)
-	}
-	if f.Pen > 0 && f.Radius > 0 && f.Pen >= 2*f.Radius {
-		r.fail(v.get("pen").at, "make the foot larger or the pen thinner", "foot of link %s: a pen of %s mm leaves nothing of a toe of %s mm across", dr.name, figure(f.Pen), figure(2*f.Radius))
-	}
-	if f.Pen > 0 && f.At != "" {
-		for _, other := range drafts {
-			if other.name != dr.name && contains(other.pins, f.At) {
-				r.fail(v.get("pen").at, "trace a joint of this link alone", "foot of link %s: joint %s carries a pin (link %s is on it too), so there is no room for a pen", dr.name, f.At, other.name)
-				break
-			}
-		}
-	}
-	return f
-}
-
-// bores reads the holes that differ.
-func (r *reader) bores(dr *draft) []Bore {
-	var out []Bore
-	for _, e := range dr.v.get("bores").all() {
-		v := e.value
-		if dr.sound && r.known(&value{text: e.name, at: e.at, sound: true}, dr.pins, "pin", "bores of link "+dr.name) != e.name {
-			continue
-		}
-		if !v.ok() {
-			continue
-		}
-		b := Bore{Joint: e.name}
-		hub := v.get("hub")
-		if v.has("flat") && !v.has("d") {
-			r.fail(v.get("flat").at, "write d instead of the other key", "bore %s: flat goes with d, the diameter of a hole with a flat", e.name)
-			continue
-		}
-		switch {
-		case v.has("round"):
-			b.Kind, b.Diameter = RoundBore, v.get("round").numberOr(0)
-		case v.has("d"):
-			b.Kind, b.Diameter, b.Flat = DBore, v.get("d").numberOr(0), v.get("flat").numberOr(0)
-			flat := v.get("flat")
-			switch {
-			case flat == nil:
-				r.fail(v.at, "say how far it is from the flat to the far side: {d: 6mm, flat: 5.5mm}", "bore %s has no flat", e.name)
-			case flat.ok() && v.get("d").ok() && (b.Flat >= b.Diameter || b.Flat <= b.Diameter/2):
-				r.fail(flat.at, "measure from the flat to the far side of the circle", "bore %s: flat %s mm is not between half and the whole of %s mm", e.name, figure(b.Flat), figure(b.Diameter))
-			}
-		case v.has("hexagon"):
-			b.Kind, b.Across = HexagonBore, v.get("hexagon").numberOr(0)
-		case v.has("hub"):
-			b.Kind, b.Diameter = HubBore, hub.get("centre").numberOr(0)
-			b.Bolts, b.Circle, b.Hole = int(hub.get("bolts").numberOr(0)), hub.get("circle").numberOr(0), hub.get("hole").numberOr(0)
-			r.hub(b, hub)
-		}
-		out = append(out, b)
-	}
-	return out
-}
-
-// hub checks that the holes of a hub do not run into each other.
-func (r *reader) hub(b Bore, v *value) {
-	if b.Bolts < 2 || b.Circle == 0 || b.Hole == 0 || b.Diameter == 0 {
-		return
-	}
-	if left := (b.Circle - b.Hole - b.Diameter) / 2; left <= 0 {
-		r.fail(v.at, "make the circle larger than "+figure(b.Hole+b.Diameter)+" mm", "bore %s: the bolt holes run into the centre hole by %s mm", b.Joint, figure(-left))
-		return
-	}
-	if left := b.Circle*math.Sin(math.Pi/float64(b.Bolts)) - b.Hole; left <= 0 {
-		r.fail(v.at, "take fewer bolts or a larger circle", "bore %s: %d holes of %s mm on a circle of %s mm run into each other by %s mm", b.Joint, b.Bolts, figure(b.Hole), figure(b.Circle), figure(-left))
-	}
 }
 
 // planeClashes reports links that share a joint and a plane.

@@ -201,3 +201,6 @@ func figureOf(v float64, dim dimension) string {
 	}
 	return figure(v)
 }
+
+// degrees writes an angle for a message.
+func degrees(radians float64) string { return figure(radians / math.Pi * 180) }

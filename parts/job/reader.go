@@ -2,7 +2,6 @@ package job
 
 import (
 	"fmt"
-	"math"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -27,12 +26,6 @@ type reader struct {
 	noStockAt  spot
 	planeSound map[string]bool          // links whose plane is known
 	groundAt   map[string]linkage.Point // where the ground pivots are
-}
-
-// unitless is a bare number where no unit is stated.
-type unitless struct {
-	at   spot
-	text string
 }
 
 func (r *reader) fail(at spot, hint, format string, args ...any) {
@@ -175,128 +168,6 @@ func hasKey(n *yaml.Node, name string) bool {
 		}
 	}
 	return false
-}
-
-// quantity reads a number with its unit and checks its bounds.
-func (r *reader) quantity(text string, f *form, what, advice string, at spot) (float64, bool) {
-	number, bare, bad := measure(text, f.dim, r.unit[f.dim])
-	if bad != nil {
-		hint := bad.hint
-		if hint == "" {
-			hint = advice
-		}
-		if hint == "" {
-			hint = f.wanted() + " is wanted"
-		}
-		r.fail(at, hint, "%s: %s", what, bad.message)
-		return 0, false
-	}
-	if bare {
-		r.bare[f.dim] = append(r.bare[f.dim], unitless{at, strings.TrimSpace(text)})
-		return 0, false
-	}
-	return number, r.inBounds(number, f, what, advice, at)
-}
-
-func (r *reader) inBounds(number float64, f *form, what, advice string, at spot) bool {
-	// Bounds in radians come from degrees: a hair's breadth is given.
-	const hair = 1e-9
-	switch {
-	case f.above && number <= f.low:
-		if number < 0 {
-			r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
-		} else {
-			r.fail(at, advice, "%s must be greater than zero", what)
-		}
-	case number < f.low-hair && f.low == 0:
-		r.fail(at, advice, "%s: %s is negative", what, figureOf(number, f.dim))
-	case number < f.low-hair:
-		r.fail(at, advice, "%s: %s is too little; the least is %s", what, figureOf(number, f.dim), figureOf(f.low, f.dim))
-	case number > f.high+hair:
-		r.fail(at, advice, "%s: %s is too much to be meant; the most is %s", what, figureOf(number, f.dim), figureOf(f.high, f.dim))
-	default:
-		return true
-	}
-	return false
-}
-
-// whole reads a whole number.
-func (r *reader) whole(text string, f *form, what, advice string, at spot) (float64, bool) {
-	n, err := strconv.Atoi(strings.TrimPrefix(strings.TrimSpace(text), "+"))
-	if err != nil {
-		r.fail(at, advice, "%s: %s is not a whole number", what, short(text))
-		return 0, false
-	}
-	return float64(n), r.inBounds(float64(n), f, what, advice, at)
-}
-
-func (r *reader) flag(n *yaml.Node, v *value, what string) {
-	quoted := n.Style&(yaml.DoubleQuotedStyle|yaml.SingleQuotedStyle) != 0
-	switch {
-	case n.Value == "true" && !quoted:
-		v.flag, v.sound = true, true
-	case n.Value == "false" && !quoted:
-		v.sound = true
-	default:
-		hint := "write true or false"
-		switch strings.ToLower(n.Value) {
-		case "yes", "y", "on", "true", "1":
-			hint = "write true"
-		case "no", "n", "off", "false", "0":
-			hint = "write false"
-		}
-		r.fail(v.at, hint, "%s: %s is neither true nor false", what, short(n.Value))
-	}
-}
-
-// longestText is the length of a title or of a material's name, in characters.
-const longestText = 200
-
-func (r *reader) word(word string, f *form, v *value, what, advice string) {
-	switch f.kind {
-	case aChoice:
-		for _, w := range f.words {
-			if w == word {
-				v.text, v.sound = word, true
-				return
-			}
-		}
-		hint := meant(word, f.words)
-		if unit := unitSlips[word]; contains(f.words, unit) {
-			hint = "write " + unit
-		} else if hint == "" {
-			hint = "write " + oneOf(f.words)
-		}
-		r.fail(v.at, hint, "%s: unknown %s", what, short(word))
-	case aName:
-		if !f.rule.form.MatchString(word) {
-			r.fail(v.at, "allowed are "+f.rule.says, "%s: %s can't be %s", what, short(word), f.rule.noun)
-			return
-		}
-		v.text, v.sound = word, true
-	default:
-		switch {
-		case strings.TrimSpace(word) == "":
-			r.fail(v.at, advice, "%s is empty", what)
-		case utf8.RuneCountInString(word) > longestText:
-			r.fail(v.at, "shorten it", "%s has %d characters, more than the %d allowed", what, utf8.RuneCountInString(word), longestText)
-		case strings.ContainsAny(word, "\n\t"):
-			r.fail(v.at, "", "%s: one line of text is wanted", what)
-		default:
-			v.text, v.sound = strings.TrimSpace(word), true
-		}
-	}
-}
-
-func (r *reader) place(n *yaml.Node, f *form, v *value, what string) {
-	if len(n.Content) != 2 {
-		r.fail(v.at, "write [x, y]", "%s: a place has two coordinates, not %d", what, len(n.Content))
-		return
-	}
-	coordinate := form{kind: aQuantity, dim: length, low: f.low, high: f.high}
-	x := r.read(n.Content[0], &coordinate, v.path+".0", what, "", "", v.at)
-	y := r.read(n.Content[1], &coordinate, v.path+".1", what, "", "", v.at)
-	v.x, v.y, v.sound = x.number, y.number, x.sound && y.sound
 }
 
 // mostEntries is how many joints, links, copies or entries of a list are taken: far more than is
@@ -499,48 +370,3 @@ func (r *reader) named(n *yaml.Node, f *form, v *value, what string) {
 		v.entries = append(v.entries, entry{k.Value, at, item})
 	}
 }
-
-// tellBare reports the numbers without a unit, once for lengths and once for angles of each file.
-func (r *reader) tellBare() {
-	if r.noUnit {
-		return
-	}
-	for _, dim := range []dimension{length, angle} {
-		noun, example := "length", "mm"
-		if dim == angle {
-			noun, example = "angle", "deg"
-		}
-		told := map[string]bool{}
-		for i, first := range r.bare[dim] {
-			if told[first.at.File] {
-				continue
-			}
-			told[first.at.File] = true
-			others, last := 0, 0
-			next := 0
-			for _, b := range r.bare[dim][i+1:] {
-				if b.at.File == first.at.File {
-					others++
-					last = b.at.Line
-					if next == 0 {
-						next = last
-					}
-				}
-			}
-			also := ""
-			switch {
-			case others == 1:
-				also = fmt.Sprintf(", nor has one more %s, on line %d", noun, next)
-			case others > 1 && next == last:
-				also = fmt.Sprintf(", nor have %d more %ss, on line %d", others, noun, next)
-			case others > 1:
-				also = fmt.Sprintf(", nor have %d more %ss, on lines %d to %d", others, noun, next, last)
-			}
-			r.fail(first.at, fmt.Sprintf("write %s%s, or state units: {%s: %s} once", first.text, example, noun, example),
-				"%s has no unit%s", short(first.text), also)
-		}
-	}
-}
-
-// degrees writes an angle for a message.
-func degrees(radians float64) string { return figure(radians / math.Pi * 180) }
