@@ -102,14 +102,14 @@ func bearingBore(name string) (float64, bool) {
 		plain = "MR" + strings.TrimPrefix(name, "MF")
 	}
 	for _, b := range bearingBores {
-		if contains(strings.Fields(b.names), plain) {
+		if slices.Contains(strings.Fields(b.names), plain) {
 			return b.mm, true
 		}
 	}
 	return 0, false
 }
 
-func isHoleClass(name string) bool { return contains(holeClasses, name) }
+func isHoleClass(name string) bool { return slices.Contains(holeClasses, name) }
 
 // material reads the name of a material.
 func (r *reader) material(v *value) string { return v.textOr("") }

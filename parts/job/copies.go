@@ -1,5 +1,10 @@
 package job
 
+import (
+	"strconv"
+	"strings"
+)
+
 // copies reads the copies and counts them out; one without a name when there are none.
 func (r *reader) copies(v *value) []Copy {
 	if v == nil {
@@ -37,9 +42,9 @@ func (r *reader) copies(v *value) []Copy {
 		for k := range count {
 			full := name
 			if count > 1 {
-				full = name + "-" + itoa(k+1)
+				full = name + "-" + strconv.Itoa(k+1)
 			}
-			if taken[lower(full)] && (name != "" || !c.has("name")) {
+			if taken[strings.ToLower(full)] && (name != "" || !c.has("name")) {
 				at := c.at
 				if c.has("name") {
 					at = c.get("name").at
@@ -47,7 +52,7 @@ func (r *reader) copies(v *value) []Copy {
 				r.fail(at, "give each copy a name of its own", "copy %s is named twice", full)
 				break
 			}
-			taken[lower(full)] = true
+			taken[strings.ToLower(full)] = true
 			out = append(out, Copy{Name: full, Phase: phases[k], Mirror: c.get("mirror").isTrue()})
 			r.places["copies."+full] = c.at.Position
 		}

@@ -3,6 +3,7 @@ package job
 import (
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"pinwright/parts/linkage"
@@ -36,7 +37,7 @@ func (c *cycleTable) path(joint string) []linkage.Point {
 
 // row names a row for a message.
 func (c *cycleTable) row(i int) string {
-	s := "line " + itoa(c.rows[i].Line)
+	s := "line " + strconv.Itoa(c.rows[i].Line)
 	if len(c.drive) > 0 {
 		s += " (drive " + c.drive[i].text + ")"
 	}

@@ -1,6 +1,8 @@
 package job
 
 import (
+	"slices"
+
 	"pinwright/parts/linkage"
 	"pinwright/parts/outline"
 )
@@ -86,7 +88,7 @@ func (r *reader) plateClash(plate FramePlate, at spot, j *Job) {
 			continue
 		}
 		for _, p := range plate.Pivots {
-			if contains(l.Pins, p) {
+			if slices.Contains(l.Pins, p) {
 				r.fail(at, "give one of them another plane", "plate %s and link %s share joint %s and both lie on plane %d", plate.Name, l.Name, p, plate.Plane)
 				break
 			}

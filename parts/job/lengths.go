@@ -54,7 +54,7 @@ func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable, tablesS
 		}
 		missing := false
 		for _, end := range []string{a, b} {
-			if !contains(dr.pins, end) {
+			if !slices.Contains(dr.pins, end) {
 				hint := meant(end, dr.pins)
 				if hint == "" {
 					hint = "add it to the pins, or take the length out"
@@ -91,20 +91,6 @@ func (r *reader) lengthsOf(dr *draft, rows []lengthRow, cyc *cycleTable, tablesS
 		}
 		dr.sound = false
 	}
-}
-
-func plural(n int) string {
-	if n == 1 {
-		return ""
-	}
-	return "s"
-}
-
-func isAre(n int) string {
-	if n == 1 {
-		return " is"
-	}
-	return " are"
 }
 
 // sameLength is how far two statements of one length may differ, mm.
@@ -144,7 +130,7 @@ func (r *reader) lengthsFromPlaces(dr *draft) (broken bool) {
 		if !e.value.ok() {
 			return true
 		}
-		if !contains(dr.pins, e.name) {
+		if !slices.Contains(dr.pins, e.name) {
 			r.fail(e.at, "add it to the pins, or take the place out", "link %s: a place for %s, which is not one of its pins %s", dr.name, e.name, allOf(dr.pins))
 			return true
 		}
@@ -183,7 +169,7 @@ func (r *reader) lengthsFromTable(dr *draft, rows []lengthRow) (broken bool) {
 		}
 		missing := false
 		for _, end := range []cell{row.from, row.to} {
-			if !contains(dr.pins, end.text) {
+			if !slices.Contains(dr.pins, end.text) {
 				hint := meant(end.text, dr.pins)
 				if hint == "" {
 					hint = "add it to the pins of the link, or take the row out"

@@ -151,7 +151,7 @@ func (r *reader) pinsOf(dr *draft, joints []string, rows []lengthRow, tableSound
 		if known != name {
 			dr.meant[name] = known
 		}
-		if contains(dr.pins, known) {
+		if slices.Contains(dr.pins, known) {
 			if known == name {
 				r.fail(at, "name each joint once", "link %s has pin %s twice", dr.name, name)
 			}
@@ -184,7 +184,7 @@ func (r *reader) pinsOf(dr *draft, joints []string, rows []lengthRow, tableSound
 				continue
 			}
 			for _, end := range []cell{row.from, row.to} {
-				if !contains(dr.pins, end.text) {
+				if !slices.Contains(dr.pins, end.text) {
 					add(end.text, end.at)
 				}
 			}
@@ -226,7 +226,7 @@ func joinedByPins(joints []linkage.Joint, drafts []draft) []linkage.Joint {
 func (r *reader) unused(v *value, joints []linkage.Joint, drafts []draft, cyc *cycleTable) {
 	listed := v.get("joints")
 	for _, joint := range joints {
-		if slices.ContainsFunc(drafts, func(d draft) bool { return contains(d.pins, joint.Name) }) {
+		if slices.ContainsFunc(drafts, func(d draft) bool { return slices.Contains(d.pins, joint.Name) }) {
 			continue
 		}
 		for _, e := range listed.all() {
@@ -343,7 +343,7 @@ func (r *reader) planeClashes(drafts []draft, j *Job) {
 				continue
 			}
 			for _, p := range b.pins {
-				if contains(a.pins, p) {
+				if slices.Contains(a.pins, p) {
 					r.fail(b.v.get("plane").at, "give one of them another plane", "links %s and %s share joint %s and both lie on plane %d", a.name, b.name, p, j.Links[i].Plane)
 					break
 				}

@@ -79,19 +79,3 @@ func meant(word string, among []string) string {
 	}
 	return ""
 }
-
-// oneOf lists words as "a, b or c".
-func oneOf(words []string) string { return join(words, " or ") }
-
-// allOf lists words as "a, b and c".
-func allOf(words []string) string { return join(words, " and ") }
-
-func join(words []string, last string) string {
-	switch len(words) {
-	case 0:
-		return ""
-	case 1:
-		return words[0]
-	}
-	return strings.Join(words[:len(words)-1], ", ") + last + words[len(words)-1]
-}

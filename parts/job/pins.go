@@ -1,6 +1,9 @@
 package job
 
-import "strings"
+import (
+	"slices"
+	"strings"
+)
 
 // pins gives every joint that carries one its pin: a joint of two links or more, and a ground joint.
 func (r *reader) pins(v *value, top spot, j *Job) []Pin {
@@ -177,7 +180,7 @@ func (r *reader) seats(own *value, links []string, joint, where string, at spot,
 	possible := append([]string{}, links...)
 	if j.Frame != nil && r.isGround(joint, j) {
 		for _, plate := range j.Frame.Plates {
-			if contains(plate.Pivots, joint) {
+			if slices.Contains(plate.Pivots, joint) {
 				possible = append(possible, plate.Name)
 			}
 		}
@@ -188,7 +191,7 @@ func (r *reader) seats(own *value, links []string, joint, where string, at spot,
 		if name == "" {
 			continue
 		}
-		if contains(out, name) {
+		if slices.Contains(out, name) {
 			r.fail(v.at, "keep one of them", "%s: link %s is named twice", where, name)
 			continue
 		}
@@ -277,20 +280,20 @@ func (r *reader) boltFit(v *value, bolt, where string) string {
 	if v == nil {
 		return classes[1]
 	}
-	if !v.ok() || bolt == "" || contains(classes, v.text) {
+	if !v.ok() || bolt == "" || slices.Contains(classes, v.text) {
 		return v.text
 	}
 	if where != "" {
 		where += ": "
 	}
 	switch {
-	case contains(other, v.text):
+	case slices.Contains(other, v.text):
 		for i := range other {
 			if other[i] == v.text {
 				r.fail(v.at, "write fit: "+classes[i], "%s%s is not a class of %s, by which bolt %s goes", where, v.text, standard, bolt)
 			}
 		}
-	case contains(plainFits, v.text) || isHoleClass(v.text):
+	case slices.Contains(plainFits, v.text) || isHoleClass(v.text):
 		r.fail(v.at, "write "+oneOf(classes)+", or clearance: 0.2mm", "%s%s is a fit of shafts and bearings; bolt %s goes by %s", where, v.text, bolt, standard)
 	default:
 		hint := meant(v.text, classes)
@@ -307,14 +310,14 @@ func (r *reader) shaftFit(v *value, where, fallback string) string {
 	if v == nil {
 		return fallback
 	}
-	if !v.ok() || contains(plainFits, v.text) || isHoleClass(v.text) {
+	if !v.ok() || slices.Contains(plainFits, v.text) || isHoleClass(v.text) {
 		return v.text
 	}
 	hint := meant(v.text, append(append([]string{}, plainFits...), "H7", "H8"))
 	if hint == "" {
 		hint = "write " + oneOf(plainFits) + ", a hole class such as H7, or clearance: 0.02mm"
 	}
-	if contains(metricFits, v.text) || contains(inchFits, v.text) {
+	if slices.Contains(metricFits, v.text) || slices.Contains(inchFits, v.text) {
 		r.fail(v.at, "write "+oneOf(plainFits)+", a hole class such as H7, or clearance: 0.02mm", "%s: %s is a fit of bolts", where, v.text)
 		return ""
 	}

@@ -2,6 +2,7 @@ package job
 
 import (
 	"reflect"
+	"strconv"
 	"strings"
 	"testing"
 )
@@ -77,7 +78,7 @@ func TestBearingBores(t *testing.T) {
 	}
 	// Number sizes of inch screws are 0.060 + 0.013 n inch.
 	for _, n := range []int{2, 3, 4, 5, 6, 8, 10} {
-		got, ok := boltDiameter("#" + itoa(n))
+		got, ok := boltDiameter("#" + strconv.Itoa(n))
 		if want := (0.060 + 0.013*float64(n)) * 25.4; !ok || got < want-5e-4 || got > want+5e-4 {
 			t.Errorf("#%d is %v mm, want %v", n, got, want)
 		}

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"reflect"
+	"slices"
 	"strconv"
 	"strings"
 	"testing"
@@ -162,7 +163,7 @@ func drawLinkage(t *rapid.T, j *Job) {
 	for _, joint := range l.Joints {
 		var on []string
 		for _, link := range l.Links {
-			if contains(link.Pins, joint.Name) {
+			if slices.Contains(link.Pins, joint.Name) {
 				on = append(on, link.Name)
 			}
 		}

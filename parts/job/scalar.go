@@ -1,6 +1,7 @@
 package job
 
 import (
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -93,7 +94,7 @@ func (r *reader) word(word string, f *form, v *value, what, advice string) {
 			}
 		}
 		hint := meant(word, f.words)
-		if unit := unitSlips[word]; contains(f.words, unit) {
+		if unit := unitSlips[word]; slices.Contains(f.words, unit) {
 			hint = "write " + unit
 		} else if hint == "" {
 			hint = "write " + oneOf(f.words)

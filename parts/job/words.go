@@ -30,12 +30,6 @@ func (r *reader) known(v *value, among []string, noun, where string) string {
 	return near
 }
 
-func contains(words []string, word string) bool { return slices.Contains(words, word) }
-
-func itoa(n int) string { return strconv.Itoa(n) }
-
-func lower(s string) string { return strings.ToLower(s) }
-
 // sameName tells whether two names would be one file on a disk that takes capitals for small letters.
 func sameName(a, b string) bool { return strings.EqualFold(a, b) }
 
@@ -55,4 +49,36 @@ func counted(n int, noun string) string {
 		return strconv.Itoa(n) + " " + strings.TrimSuffix(noun, "y") + "ies"
 	}
 	return strconv.Itoa(n) + " " + noun + "s"
+}
+
+// oneOf lists words as "a, b or c".
+func oneOf(words []string) string { return join(words, " or ") }
+
+// allOf lists words as "a, b and c".
+func allOf(words []string) string { return join(words, " and ") }
+
+func join(words []string, last string) string {
+	switch len(words) {
+	case 0:
+		return ""
+	case 1:
+		return words[0]
+	}
+	return strings.Join(words[:len(words)-1], ", ") + last + words[len(words)-1]
+}
+
+// plural is the s of several things.
+func plural(n int) string {
+	if n == 1 {
+		return ""
+	}
+	return "s"
+}
+
+// isAre is the verb that goes with a number of things.
+func isAre(n int) string {
+	if n == 1 {
+		return " is"
+	}
+	return " are"
 }
