@@ -87,7 +87,8 @@ func (l *ledger) finish(s *scene) {
 }
 
 // moved is the edge that the beam leaves at distance by outside the path, negative: inside it. False
-// when that is not one contour.
+// when that is not one contour. Each contour is moved by itself, unlike in kerf.Finished, which wants a
+// sound part: of an edited one, what is still sound is to be measured too.
 func moved(c *cut, by float64) (outline.Outline, bool) {
 	if by == 0 {
 		return c.path, true
