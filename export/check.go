@@ -11,8 +11,11 @@ import (
 // within the digits that the files have for it.
 const maxSize = 1e6
 
+// maxBulge is where the geometry gives up: an arc so nearly full that its chord no longer fixes it.
+const maxBulge = 1e6
+
 // Check tells whether a sheet can be written: a size above zero, engraving as open paths of two or
-// more points, cuts as outlines of two or more, and every number a number no larger than a
+// more points, cuts as outlines of two or more, and every coordinate a number no larger than a
 // kilometre. The error names the sheet and the step.
 func (s Sheet) Check() error {
 	if !(s.Width > 0 && s.Height > 0 && s.Width <= maxSize && s.Height <= maxSize) {
@@ -41,8 +44,8 @@ func (s Step) check() error {
 			len(s.Closed), len(s.Open))
 	}
 	for _, v := range run {
-		if !(math.Abs(v.X) <= maxSize && math.Abs(v.Y) <= maxSize) || math.IsNaN(v.Bulge) || math.IsInf(v.Bulge, 0) {
-			return fmt.Errorf("(%g, %g) with bulge %g is not a place within a kilometre", v.X, v.Y, v.Bulge)
+		if !(math.Abs(v.X) <= maxSize && math.Abs(v.Y) <= maxSize) || !(math.Abs(v.Bulge) <= maxBulge) {
+			return fmt.Errorf("(%g, %g) with bulge %g cannot be drawn", v.X, v.Y, v.Bulge)
 		}
 	}
 	return nil

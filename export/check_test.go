@@ -17,8 +17,8 @@ func TestCheck(t *testing.T) {
 		"sheet a: step 1 (p): operation 3 does not exist":                                                           {Name: "a", Width: 1, Height: 1, Steps: []Step{{Op: 3, Part: "p"}}},
 		"sheet a: step 1 (p): engraving is an open path of two or more points; this one has 0, and an outline of 2": {Name: "a", Width: 1, Height: 1, Steps: []Step{{Part: "p", Closed: circle}}},
 		"sheet a: step 2 (q): a cut is an outline of two or more points; this one has 0, and an open path of 2":     {Name: "a", Width: 1, Height: 1, Steps: []Step{{Op: CutInside, Closed: circle}, {Op: CutInside, Part: "q", Open: line}}},
-		"sheet a: step 1 (): (1, +Inf) with bulge 0 is not a place within a kilometre":                              {Name: "a", Width: 1, Height: 1, Steps: []Step{{Open: outline.Path{line[0], {Point: outline.Point{X: 1, Y: math.Inf(1)}}}}}},
-		"sheet a: step 1 (): (1, 2) with bulge NaN is not a place within a kilometre":                               {Name: "a", Width: 1, Height: 1, Steps: []Step{{Open: outline.Path{{Point: line[0].Point, Bulge: math.NaN()}, line[1]}}}},
+		"sheet a: step 1 (): (1, +Inf) with bulge 0 cannot be drawn":                                                {Name: "a", Width: 1, Height: 1, Steps: []Step{{Open: outline.Path{line[0], {Point: outline.Point{X: 1, Y: math.Inf(1)}}}}}},
+		"sheet a: step 1 (): (1, 2) with bulge NaN cannot be drawn":                                                 {Name: "a", Width: 1, Height: 1, Steps: []Step{{Open: outline.Path{{Point: line[0].Point, Bulge: math.NaN()}, line[1]}}}},
 	} {
 		got := ""
 		if err := s.Check(); err != nil {

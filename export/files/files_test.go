@@ -197,7 +197,7 @@ func TestCommit(t *testing.T) {
 
 func commitOK(t testing.TB, out string, s []File) {
 	t.Helper()
-	if err := Commit(out, s, Listed); err != nil {
+	if err := commit(quick{}, out, s, Listed); err != nil {
 		t.Fatal(err)
 	}
 }
@@ -336,7 +336,7 @@ func TestWorkingDirectoryIsKept(t *testing.T) {
 
 func TestNoPermission(t *testing.T) {
 	tmp := t.TempDir()
-	f := &faulty{osDisk: osDisk{}, at: 0, err: fs.ErrPermission}
+	f := &faulty{at: 0, err: fs.ErrPermission}
 	err := commit(f, filepath.Join(tmp, "out"), set("one", "a.dxf"), Listed)
 	if !errors.Is(err, fs.ErrPermission) || !strings.Contains(err.Error(), "choose another directory") {
 		t.Errorf("got %v", err)

@@ -1,6 +1,9 @@
 package list
 
-import "strings"
+import (
+	"strings"
+	"unicode/utf8"
+)
 
 // Shield returns a text that no spreadsheet takes for a formula: one whose first character other
 // than a space is = + - or @ (or their full-width forms, or an apostrophe) gets an apostrophe in
@@ -11,11 +14,9 @@ import "strings"
 // and line feed, which have become spaces.
 func Shield(s string) string {
 	s = strings.Map(plain, strings.ToValidUTF8(s, "\uFFFD"))
-	for _, r := range strings.TrimLeft(s, " \u00a0\ufeff") {
-		if strings.ContainsRune("=+-@'\uff1d\uff0b\uff0d\uff20", r) {
-			return "'" + s
-		}
-		break
+	first, _ := utf8.DecodeRuneInString(strings.TrimLeft(s, " \u00a0\ufeff"))
+	if strings.ContainsRune("=+-@'\uff1d\uff0b\uff0d\uff20", first) {
+		return "'" + s
 	}
 	return s
 }

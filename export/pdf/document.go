@@ -5,7 +5,6 @@ import (
 	"crypto/sha256"
 	"fmt"
 	"io"
-	"math"
 	"strconv"
 	"strings"
 	"unicode/utf16"
@@ -126,14 +125,4 @@ func text(s string) string {
 	}
 	b.WriteString(">")
 	return b.String()
-}
-
-// finite tells whether all of them are numbers.
-func finite(vs ...float64) bool {
-	for _, v := range vs {
-		if math.IsNaN(v) || math.IsInf(v, 0) {
-			return false
-		}
-	}
-	return true
 }

@@ -45,8 +45,10 @@ func workshop(t testing.TB) pdf.Papers {
 		Blocks: []pdf.Block{
 			pdf.Text("24 parts on 2 sheets of cast acrylic 3 mm, Ø 4.5 mm holes ±0.1."),
 			pdf.Cautions{"Moving linkages pinch: keep fingers away while the crank turns.", "Strength figures are estimates for models and prototypes."},
-			pdf.Heading("Sheets"), pdf.Drawing{Picture: layout, Caption: "Sheet clear3-1, seen from above."},
-			pdf.Heading("Pin kits"), pdf.Drawing{Picture: side, Caption: "From the lowest plane up."},
+			pdf.Heading("Sheets"),
+			pdf.Drawing{Picture: layout, Caption: "Sheet clear3-1, seen from above."},
+			pdf.Heading("Pin kits"),
+			pdf.Drawing{Picture: side, Caption: "From the lowest plane up."},
 			pdf.Heading("Holes and fits"), holes,
 		},
 	}

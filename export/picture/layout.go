@@ -87,7 +87,7 @@ func Layout(s export.Sheet, width, height float64) (Picture, error) {
 	for i, part := range parts {
 		x := float64(i/legend.rows) * legend.column
 		y := foot - text*1.5*float64(i%legend.rows+2)
-		p.label(x, y, fmt.Sprintf("%d  %s", i+1, part.name), text, Start, false)
+		p.label(x, y, fmt.Sprintf("%d %s", i+1, part.name), text, Start, false)
 	}
 	return p, nil
 }
@@ -157,7 +157,7 @@ type names struct {
 func legendOf(parts []piece, width, size float64) names {
 	longest := 0.0
 	for i, part := range parts {
-		longest = max(longest, roughWidth(fmt.Sprintf("%d  %s", i+1, part.name), size))
+		longest = max(longest, roughWidth(fmt.Sprintf("%d %s", i+1, part.name), size))
 	}
 	columns := max(1, min(len(parts), int(width/(longest+4))))
 	rows := max(1, (len(parts)+columns-1)/columns)

@@ -59,18 +59,23 @@ func (Label) item() {}
 
 // The colours of pictures: ink, greys, and tints on which ink is well read.
 var (
-	ink   = export.RGB{R: 0x22, G: 0x22, B: 0x22}
-	grey  = export.RGB{R: 0x8a, G: 0x8a, B: 0x8a}
-	pale  = export.RGB{R: 0xf3, G: 0xf3, B: 0xf0}
-	white = export.RGB{R: 0xff, G: 0xff, B: 0xff}
+	ink  = export.RGB{R: 0x22, G: 0x22, B: 0x22}
+	grey = export.RGB{R: 0x8a, G: 0x8a, B: 0x8a}
+	pale = export.RGB{R: 0xf3, G: 0xf3, B: 0xf0}
 )
 
 // tint returns the colour of the i-th thing of a row: eight tints, light enough for ink on them, that
 // differ in hue and lightness.
 func tint(i int) export.RGB {
 	tints := [...]export.RGB{
-		{R: 0xbc, G: 0xd4, B: 0xe6}, {R: 0xf3, G: 0xd9, B: 0xa4}, {R: 0xc9, G: 0xe4, B: 0xc3}, {R: 0xe8, G: 0xc4, B: 0xcb},
-		{R: 0xd8, G: 0xd1, B: 0xea}, {R: 0xf2, G: 0xef, B: 0xb6}, {R: 0xb9, G: 0xdf, B: 0xdb}, {R: 0xdd, G: 0xcf, B: 0xc0},
+		{R: 0xbc, G: 0xd4, B: 0xe6},
+		{R: 0xf3, G: 0xd9, B: 0xa4},
+		{R: 0xc9, G: 0xe4, B: 0xc3},
+		{R: 0xe8, G: 0xc4, B: 0xcb},
+		{R: 0xd8, G: 0xd1, B: 0xea},
+		{R: 0xf2, G: 0xef, B: 0xb6},
+		{R: 0xb9, G: 0xdf, B: 0xdb},
+		{R: 0xdd, G: 0xcf, B: 0xc0},
 	}
 	return tints[((i%len(tints))+len(tints))%len(tints)]
 }
@@ -80,8 +85,10 @@ func colour(c export.RGB) *export.RGB { return &c }
 // rectangle is counter-clockwise from the lower left corner.
 func rectangle(x0, y0, x1, y1 float64) outline.Outline {
 	return outline.Outline{
-		{Point: outline.Point{X: x0, Y: y0}}, {Point: outline.Point{X: x1, Y: y0}},
-		{Point: outline.Point{X: x1, Y: y1}}, {Point: outline.Point{X: x0, Y: y1}},
+		{Point: outline.Point{X: x0, Y: y0}},
+		{Point: outline.Point{X: x1, Y: y0}},
+		{Point: outline.Point{X: x1, Y: y1}},
+		{Point: outline.Point{X: x0, Y: y1}},
 	}
 }
 

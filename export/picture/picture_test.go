@@ -33,7 +33,7 @@ func ExampleLayout() {
 	// engraved
 	// inside cut
 	// outside cut
-	// 1  crank
+	// 1 crank
 }
 
 func ExampleSideView() {
@@ -53,13 +53,13 @@ func ExampleSideView() {
 		fmt.Println(l.Text)
 	}
 	// Output:
-	// drawn 5 : 1, lengths in mm
+	// drawn 5 : 1
 	// plane 1
 	// A
 	// ISO 4762 M4 x 16
-	// head  4
-	// washer  0.8
-	// crank  2.85
+	// head 4 mm
+	// washer 0.8 mm
+	// crank 2.85 mm
 	// 16
 }
 
@@ -103,7 +103,7 @@ func TestLayout(t *testing.T) {
 		if l.Bold && len(l.Text) <= 2 {
 			numbers[l.Text] = outline.Point{X: l.At.X, Y: l.At.Y + 0.36*l.Size}
 		}
-		if number, name, ok := strings.Cut(l.Text, "  "); ok {
+		if number, name, ok := strings.Cut(l.Text, " "); ok {
 			legend[name] = number
 		}
 		if l.At.X < 0 || l.At.X > p.Width || l.At.Y < 0 || l.At.Y > p.Height {
@@ -233,6 +233,36 @@ func TestSideView(t *testing.T) {
 	})
 }
 
+// Pictures for pages are no higher than the page, at one scale, and hold every kit once.
+func TestSideViews(t *testing.T) {
+	three, levels := sample.Kits()
+	var kits []picture.Kit
+	for range 7 {
+		kits = append(kits, three...)
+	}
+	pictures, err := picture.SideViews(kits, levels, 174, 180)
+	if err != nil {
+		t.Fatal(err)
+	}
+	names := 0
+	for _, p := range pictures {
+		if p.Height > 180 {
+			t.Errorf("%g mm high", p.Height)
+		}
+		for i, l := range labels(p) {
+			if i == 0 && l.Text != labels(pictures[0])[0].Text {
+				t.Errorf("two scales: %s", l.Text)
+			}
+			if l.Text == "A" || l.Text == "B" || l.Text == "C" {
+				names++
+			}
+		}
+	}
+	if names != 21 || len(pictures) < 2 {
+		t.Errorf("%d kits on %d pictures", names, len(pictures))
+	}
+}
+
 // The scale is read off: a part of 13.5 mm in a picture drawn 2 : 1 is 27 mm.
 func TestSideViewScale(t *testing.T) {
 	kits, levels := sample.Kits()
@@ -240,11 +270,11 @@ func TestSideViewScale(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	if got := labels(p)[0].Text; got != "drawn 2 : 1, lengths in mm" {
+	if got := labels(p)[0].Text; got != "drawn 2 : 1" {
 		t.Fatalf("%q", got)
 	}
 	for _, item := range p.Items {
-		if shape, ok := item.(picture.Shape); ok && shape.Title == "crank  2.85" {
+		if shape, ok := item.(picture.Shape); ok && shape.Title == "crank 2.85 mm" {
 			box := shape.Closed[0].Bounds().Union(shape.Closed[1].Bounds())
 			if math.Abs(box.Width()-27) > 1e-9 || math.Abs(box.Height()-5.7) > 1e-9 {
 				t.Errorf("drawn as %g x %g", box.Width(), box.Height())

@@ -49,13 +49,32 @@ type Level struct {
 // SideView draws pin kits in section, side by side on common levels, in rows no wider than width mm of
 // paper. Each piece has its name and thickness beside it, each kit the length of its shank. The scale
 // is the largest of 5, 2, 1, 0.5, 0.2 ... at which the widest kit fits the width and a row fits half
-// of the height; the title says which.
+// of the height; it is written at the top. With many rows the picture is higher than height.
 func SideView(kits []Kit, levels []Level, width, height float64) (Picture, error) {
 	v, err := newSide(kits, levels, width, height)
 	if err != nil {
 		return Picture{}, fmt.Errorf("side view: %w", err)
 	}
-	return v.draw(), nil
+	return v.draw(v.rows), nil
+}
+
+// SideViews draws the same as SideView in as many pictures as it takes for each to be no higher than
+// height (but for a single row that is higher by itself), all at one scale.
+func SideViews(kits []Kit, levels []Level, width, height float64) ([]Picture, error) {
+	v, err := newSide(kits, levels, width, height)
+	if err != nil {
+		return nil, fmt.Errorf("side view: %w", err)
+	}
+	var pictures []Picture
+	for begin := 0; begin < len(v.rows); {
+		end := begin + 1
+		for end < len(v.rows) && v.height(v.rows[begin:end+1]) <= height {
+			end++
+		}
+		pictures = append(pictures, v.draw(v.rows[begin:end]))
+		begin = end
+	}
+	return pictures, nil
 }
 
 // Measures of a side view, mm of paper.
@@ -73,12 +92,13 @@ type side struct {
 	levels    []Level
 	width     float64
 	scale     float64
-	low, high float64 // of everything, mm along the axis
-	rows      [][]int // indices of kits
+	low, high float64        // of everything, mm along the axis
+	rows      [][]int        // indices of kits
+	tints     map[string]int // of the parts: one of a name has one tint throughout
 }
 
 func newSide(kits []Kit, levels []Level, width, height float64) (*side, error) {
-	v := &side{kits: kits, levels: levels, width: width, low: math.Inf(1), high: math.Inf(-1)}
+	v := &side{kits: kits, levels: levels, width: width, low: math.Inf(1), high: math.Inf(-1), tints: map[string]int{}}
 	if len(kits) == 0 {
 		return nil, fmt.Errorf("there is no pin kit to draw")
 	}
@@ -91,6 +111,9 @@ func newSide(kits []Kit, levels []Level, width, height float64) (*side, error) {
 				return nil, fmt.Errorf("pin kit %s: %s from %g to %g mm, diameter %g and %g, cannot be drawn", k.Name, p.Name, p.From, p.To, p.Outer, p.Inner)
 			}
 			v.low, v.high = min(v.low, p.From), max(v.high, p.To)
+			if _, known := v.tints[p.Name]; p.Kind == PartPiece && !known {
+				v.tints[p.Name] = len(v.tints)
+			}
 		}
 	}
 	for _, l := range levels {
@@ -158,7 +181,7 @@ func caption(p Piece) string {
 	case p.Kind == ShankPiece:
 		return p.Name
 	}
-	return p.Name + "  " + figure(p.To-p.From)
+	return p.Name + " " + figure(p.To-p.From) + " mm"
 }
 
 // rowHeight is that of the kits, or of the longest column of captions if that is more.
@@ -176,18 +199,28 @@ func (v *side) rowHeight(row []int) float64 {
 	return h
 }
 
-func (v *side) draw() Picture {
+// height is that of a picture of the rows.
+func (v *side) height(rows [][]int) float64 {
 	total := sideTitle
-	for _, row := range v.rows {
+	for _, row := range rows {
 		total += v.rowHeight(row) + sideHead + sideGap
+	}
+	return total
+}
+
+func (v *side) draw(rows [][]int) Picture {
+	total := v.height(rows)
+	count := 0
+	for _, row := range rows {
+		count += len(row)
 	}
 	p := Picture{
 		Title: "Side view of the pin kits", Width: v.width, Height: total,
-		Text: fmt.Sprintf("%d pin kits in section, from the lowest plane at the bottom to the highest at the top.", len(v.kits)),
+		Text: fmt.Sprintf("%d pin kits in section, from the lowest plane at the bottom to the highest at the top.", count),
 	}
-	p.label(v.width, total-sideName, ratio(v.scale)+", lengths in mm", sideText, End, false)
+	p.label(v.width, total-sideName, ratio(v.scale), sideText, End, false)
 	y := total - sideTitle
-	for _, row := range v.rows {
+	for _, row := range rows {
 		height := v.rowHeight(row)
 		y -= sideHead + height
 		// The kits stand in the middle of the row's height.
@@ -236,13 +269,11 @@ func (v *side) drawKit(p *Picture, k Kit, x, zero, bottom, height float64) {
 	sort.SliceStable(order, func(a, b int) bool {
 		return k.Pieces[order[a]].Kind == ShankPiece && k.Pieces[order[b]].Kind != ShankPiece
 	})
-	tints := 0
 	for _, i := range order {
 		piece := k.Pieces[i]
 		fill := fills[piece.Kind]
 		if piece.Kind == PartPiece {
-			fill = tint(tints)
-			tints++
+			fill = tint(v.tints[piece.Name])
 		}
 		low, high := zero+v.scale*piece.From, zero+v.scale*piece.To
 		outer, inner := v.scale*piece.Outer/2, v.scale*piece.Inner/2

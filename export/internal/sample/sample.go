@@ -34,7 +34,8 @@ func Sheet() export.Sheet {
 			export.Step{Op: export.Engrave, Part: part, Open: outline.Path{at(0, 4), at(0, 0), at(2.4, 0)}},
 			export.Step{Op: export.Engrave, Part: part, Open: outline.Path{
 				{Point: outline.Point{X: x + 5.4, Y: y + 3.4}, Bulge: 0.6},
-				{Point: outline.Point{X: x + 4.2, Y: y + 2}, Bulge: -0.6}, {Point: outline.Point{X: x + 3, Y: y + 0.6}},
+				{Point: outline.Point{X: x + 4.2, Y: y + 2}, Bulge: -0.6},
+				{Point: outline.Point{X: x + 3, Y: y + 0.6}},
 			}})
 	}
 	for i := range 5 {
@@ -45,7 +46,7 @@ func Sheet() export.Sheet {
 		add(export.CutInside, part, outline.CircleHole(outline.Point{X: x + l, Y: y}, 2.16))
 		add(export.CutOutside, part, Bar(x, y, l, 13.5, 0))
 	}
-	mark("left-1.crank", 200, 128)
+	mark("left-1.crank", 180, 128)
 	add(export.CutInside, "left-1.crank", outline.CircleHole(outline.Point{X: 215, Y: 130}, 27))
 	add(export.CutOutside, "left-1.crank", outline.Circle(outline.Point{X: 215, Y: 130}, 42))
 	add(export.CutInside, "right-1.hub", outline.CircleHole(outline.Point{X: 205, Y: 130}, 3.2))
