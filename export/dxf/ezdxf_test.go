@@ -11,6 +11,7 @@ import (
 
 	"pinwright/export"
 	"pinwright/export/dxf"
+	"pinwright/export/internal/sample"
 	"pinwright/parts/outline"
 )
 
@@ -170,6 +171,16 @@ func agree(t *testing.T, steps []export.Step, seen []ezEntity) {
 			}
 		}
 	}
+}
+
+// Everything that a sheet can have, many times over: every coordinate as ezdxf reads it is the one meant.
+func TestEzdxfReadsEveryCoordinate(t *testing.T) {
+	s := sample.Sheet()
+	d := audit(t, write(t, s, dxf.Options{}))
+	if len(d.Errors)+len(d.Fixes) > 0 || len(d.Entities) != len(s.Steps) {
+		t.Fatalf("errors %q, fixes %q, %d entities of %d", d.Errors, d.Fixes, len(d.Entities), len(s.Steps))
+	}
+	agree(t, s.Steps, d.Entities)
 }
 
 // resaveScript opens a drawing and saves it again as another version.
