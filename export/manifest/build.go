@@ -11,8 +11,10 @@ import (
 
 // MeasureOutline takes the measures of a contour, of whichever orientation.
 func MeasureOutline(o outline.Outline) Measure {
-	m := o.Moments()
-	return Measure{Area: math.Abs(m.Area), Perimeter: o.Length(), Middle: Point(m.Centroid)}
+	m, box := o.Moments(), o.Bounds()
+	return Measure{
+		Area: math.Abs(m.Area), Perimeter: o.Length(), Middle: Point(m.Centroid), Low: Point(box.Min), High: Point(box.Max),
+	}
 }
 
 // NewPart states what a part must measure when it is cut: its holes, its outside, its mark and its

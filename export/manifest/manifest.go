@@ -140,6 +140,8 @@ type Measure struct {
 	Area      float64 `json:"area"`      // enclosed, positive
 	Perimeter float64 `json:"perimeter"` // length of the edge
 	Middle    Point   `json:"middle"`    // centroid of the enclosed area
+	Low       Point   `json:"low"`       // lower left and upper right corner of the box round it, along the axes
+	High      Point   `json:"high"`      // of the part's frame: they tell which way it is turned
 }
 
 // Hole is one inside contour of a part.

@@ -15,6 +15,13 @@ import (
 
 var hash = strings.Repeat("0123456789abcdef", 4)
 
+// box is a measure about a place on the x axis.
+func box(area, perimeter, x float64) manifest.Measure {
+	return manifest.Measure{
+		Area: area, Perimeter: perimeter, Middle: manifest.Point{X: x}, Low: manifest.Point{X: x - 1, Y: -1}, High: manifest.Point{X: x + 1, Y: 1},
+	}
+}
+
 // sample is a run of one sheet with one bar.
 func sample() manifest.Manifest {
 	return manifest.Manifest{
@@ -28,12 +35,12 @@ func sample() manifest.Manifest {
 		Parts: []manifest.Part{{
 			Name: "bar", Link: "bar", Stock: "clear3", Sheet: "clear3-1", Place: manifest.Placement{Turn: 90, X: 20, Y: 20},
 			Mark: manifest.Mark{Text: "BAR", Strokes: 9, Length: 31.5}, Area: 730, Mass: 2.4,
-			Outside: manifest.Measure{Area: 754, Perimeter: 144, Middle: manifest.Point{X: 25}},
+			Outside: box(754, 144, 25),
 			Holes: []manifest.Hole{
-				{Name: "A", Kind: "pin", Joint: "A", Diameter: 4.5, Measure: manifest.Measure{Area: 15.9, Perimeter: 14.1}},
+				{Name: "A", Kind: "pin", Joint: "A", Diameter: 4.5, Measure: box(15.9, 14.1, 0)},
 				{
 					Name: "B", Kind: "pin", Joint: "B", Centre: manifest.Point{X: 50}, Diameter: 1.0 / 3,
-					Measure: manifest.Measure{Area: 15.9, Perimeter: 14.1, Middle: manifest.Point{X: 50}},
+					Measure: box(15.9, 14.1, 50),
 				},
 			},
 			Lengths: []manifest.Length{{A: "A", B: "B", MM: 50}},
@@ -107,6 +114,7 @@ func TestDecodeRefuses(t *testing.T) {
 		"length to nowhere":   {change(`"b": "B"`, `"b": "C"`), "part bar: length A-C: it has neither a hole nor a foot at C"},
 		"length of nothing":   {change(`"mm": 50`, `"mm": 0`), "part bar: length A-B is 0"},
 		"a hole without area": {change(`"area": 15.9`, `"area": 0`), "part bar: hole A: area is 0"},
+		"a box inside out":    {change(`"x": -1`, `"x": 1.5`), "part bar: hole A: its box from (1.5, -1) to (1, 1) is empty"},
 		"several things at once": {
 			strings.Replace(change(`"mm": 50`, `"mm": -1`), `"parts": 1`, `"parts": 3`, 1), "part bar: length A-B is -1\nsheet clear3-1 says",
 		},
@@ -185,7 +193,8 @@ func TestNewPart(t *testing.T) {
 		t.Fatal(err)
 	}
 	// Rectangle and circle by their closed forms.
-	if math.Abs(got.Outside.Area-200) > 1e-12 || got.Outside.Perimeter != 60 || got.Outside.Middle != (manifest.Point{X: 10, Y: 5}) {
+	if math.Abs(got.Outside.Area-200) > 1e-12 || got.Outside.Perimeter != 60 || got.Outside.Middle != (manifest.Point{X: 10, Y: 5}) ||
+		got.Outside.Low != (manifest.Point{}) || got.Outside.High != (manifest.Point{X: 20, Y: 10}) {
 		t.Errorf("outside %+v", got.Outside)
 	}
 	hole := got.Holes[0]

@@ -155,7 +155,10 @@ func (v *validator) drawing(what, name string, files, seen map[string]bool) {
 func (v *validator) measure(what string, m Measure) {
 	v.positive(what+": area", m.Area)
 	v.positive(what+": perimeter", m.Perimeter)
-	v.finite(what+": middle", m.Middle.X, m.Middle.Y)
+	v.finite(what+": middle, low and high", m.Middle.X, m.Middle.Y, m.Low.X, m.Low.Y, m.High.X, m.High.Y)
+	if !(m.Low.X < m.High.X && m.Low.Y < m.High.Y) {
+		v.add("%s: its box from (%g, %g) to (%g, %g) is empty", what, m.Low.X, m.Low.Y, m.High.X, m.High.Y)
+	}
 }
 
 func (v *validator) part(p Part) {

@@ -9,15 +9,14 @@ import (
 )
 
 // compare measures a piece against the part it should be.
-func (l *ledger) compare(s *scene, part manifest.Part, index int, have []feature) {
+func (l *ledger) compare(s *scene, part manifest.Part, index int) {
 	p := &s.parts[index]
 	line := s.cuts[p.outside].line
-	want := expectedFeatures(part)
-	f := lay(want, have, motionOf(part.Place))
+	f := lay(part, p, motionOf(part.Place))
 	if f.out > 0 {
 		other := part.Place
 		other.Flip = !other.Flip
-		if g := lay(want, have, motionOf(other)); g.out == 0 {
+		if g := lay(part, p, motionOf(other)); g.out == 0 {
 			l.fail(shapes, Finding{
 				File: s.file, Line: line, Part: part.Name, What: "lies with the wrong side up",
 				Do: "turn it over: its mark would be on the wrong face",
@@ -28,7 +27,7 @@ func (l *ledger) compare(s *scene, part manifest.Part, index int, have []feature
 
 	l.openings(s, part, p, f, line)
 	l.lengths(s, part, p, f, line)
-	l.edge(s, part, "", line, part.Outside, p.measure, f)
+	l.edge(s, part, "", line, part.Outside, p.measure, p.edge, f)
 	l.feet(s, part, p, f, line)
 	for i, h := range part.Holes {
 		if f.pairs[i] < 0 {
@@ -41,7 +40,7 @@ func (l *ledger) compare(s *scene, part manifest.Part, index int, have []feature
 			l.middle(s, part, h.Name, at, f.motion.Apply(outline.Point(h.Centre)), o.centre())
 			continue
 		}
-		l.edge(s, part, h.Name, at, h.Measure, o.measure, f)
+		l.edge(s, part, h.Name, at, h.Measure, o.measure, o.edge, f)
 	}
 }
 
@@ -171,8 +170,9 @@ func (l *ledger) diameter(s *scene, part manifest.Part, h manifest.Hole, o openi
 	}
 }
 
-// edge compares a contour's area, perimeter and middle; hole is "" for the outside.
-func (l *ledger) edge(s *scene, part manifest.Part, hole string, line int, want, have manifest.Measure, f fit) {
+// edge compares a contour's area, perimeter and middle, and which way it is turned; hole is "" for the
+// outside.
+func (l *ledger) edge(s *scene, part manifest.Part, hole string, line int, want, have manifest.Measure, o outline.Outline, f fit) {
 	l.count(shapes, 1)
 	off := edgeError(want, have)
 	name := part.Name + " " + hole
@@ -193,8 +193,22 @@ func (l *ledger) edge(s *scene, part manifest.Part, hole string, line int, want,
 		})
 		return
 	}
-	l.middle(s, part, hole, line, f.motion.Apply(outline.Point(want.Middle)), outline.Point(have.Middle))
+	middle := f.motion.Apply(outline.Point(want.Middle))
+	l.middle(s, part, hole, line, middle, outline.Point(have.Middle))
+	if off := boxError(want, o, f); off > limit && middle.Dist(outline.Point(have.Middle)) <= limit {
+		what := "the outside is turned against the holes"
+		if hole != "" {
+			what = "is turned in its part"
+		}
+		l.fail(shapes, Finding{
+			File: s.file, Line: line, Part: part.Name, Hole: hole, What: what,
+			Expected: "a box of " + size(want.High.X-want.Low.X, want.High.Y-want.Low.Y),
+			Found:    "sides that differ by up to " + millimetres(off), Do: "write the files anew",
+		})
+	}
 }
+
+func size(width, height float64) string { return fmt.Sprintf("%.4f x %.4f mm", width, height) }
 
 // middle compares where a contour is in its part.
 func (l *ledger) middle(s *scene, part manifest.Part, hole string, line int, want, have outline.Point) {

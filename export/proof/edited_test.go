@@ -87,6 +87,12 @@ func TestEditedSheetFails(t *testing.T) {
 			func(s *export.Sheet) { moved(&s.Steps[window], shift(0, 0.05)) },
 			[]string{"shapes: frame, hole window 1: is moved in its part by 0.0500 mm"},
 		},
+		"the window turned": {
+			func(s *export.Sheet) {
+				s.Steps[window].Closed = s.Steps[window].Closed.Transform(shift(-195, -110)).Transform(outline.Place(0.01, false, pt(195, 110)))
+			},
+			[]string{"shapes: frame, hole window 1: is turned in its part (expected a box of 46.0000 x 36.0000 mm, found sides that differ by up to "},
+		},
 		"the window widened": {
 			func(s *export.Sheet) {
 				s.Steps[window].Closed = rounded(3, pt(175, 95), pt(215.01, 95), pt(215.01, 125), pt(175, 125)).path(-kerfWidth / 2)

@@ -61,8 +61,20 @@ const mostAnchors = 60
 // that was moved then stands out alone and does not drag the others with it, as it would in a least
 // squares fit. usual is the motion when there is nothing to turn by.
 //
+// Where the features agree under several motions (a bar with two like holes), the contours decide: the
+// first motion is taken that also turns them as they should be, and the usual one is tried first. A part
+// that no motion turns right has one disagreement.
+//
 // Running time is O(h^2) for a part of h holes that agrees, by its longest pair of anchors.
-func lay(want, have []feature, usual outline.Transform) fit {
+func lay(part manifest.Part, p *piece, usual outline.Transform) fit {
+	want, have := expectedFeatures(part), p.features()
+	try := func(m outline.Transform) fit {
+		f := judge(want, have, m)
+		if f.out == 0 && !p.turned(part, f) {
+			f.out = 1
+		}
+		return f
+	}
 	type anchor struct {
 		i, j int
 		d    float64
@@ -83,7 +95,7 @@ func lay(want, have []feature, usual outline.Transform) fit {
 	still.Move = outline.Point{}
 	at := still.Apply(want[0].at)
 	still.Move = outline.Point{X: have[0].at.X - at.X, Y: have[0].at.Y - at.Y}
-	best := judge(want, have, still)
+	best := try(still)
 
 	for _, a := range anchors {
 		if best.out == 0 {
@@ -98,13 +110,36 @@ func lay(want, have []feature, usual outline.Transform) fit {
 					continue
 				}
 				m := carry(want[a.i].at, want[a.j].at, have[p].at, have[q].at, usual.Mirror)
-				if f := judge(want, have, m); f.better(best) {
+				if f := try(m); f.better(best) {
 					best = f
 				}
 			}
 		}
 	}
 	return best
+}
+
+// turned says whether the contours of a piece that are not round are turned as those of the part: by the
+// boxes round them, in the part's frame.
+func (p *piece) turned(part manifest.Part, f fit) bool {
+	if boxError(part.Outside, p.edge, f) > limit {
+		return false
+	}
+	for i, h := range part.Holes {
+		if h.Diameter == 0 && f.pairs[i] >= 0 && boxError(h.Measure, p.holes[f.pairs[i]].edge, f) > limit {
+			return false
+		}
+	}
+	return true
+}
+
+// boxError is how far the box round a contour, taken back into the part's frame, differs from the one
+// that it should have.
+func boxError(want manifest.Measure, o outline.Outline, f fit) float64 {
+	box := o.Transform(f.motion.Inverse()).Bounds()
+	return math.Max(
+		math.Max(math.Abs(box.Min.X-want.Low.X), math.Abs(box.Min.Y-want.Low.Y)),
+		math.Max(math.Abs(box.Max.X-want.High.X), math.Abs(box.Max.Y-want.High.Y)))
 }
 
 // carry is the motion that takes a to p and the direction a-b to p-q.

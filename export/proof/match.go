@@ -12,8 +12,7 @@ import (
 // kind is the parts of a drawing that are alike in every figure: any of them may be any other.
 type kind struct {
 	part    manifest.Part // the first of them
-	want    []feature
-	members []int // indices into the expected parts
+	members []int         // indices into the expected parts
 }
 
 // match assigns the pieces to the expected parts, compares each pair, and reports what is left over on
@@ -24,23 +23,20 @@ func (l *ledger) match(s *scene) {
 	for i, p := range s.expected {
 		middle[i] = motionOf(p.Place).Apply(outline.Point(p.Outside.Middle))
 	}
-	have := make([][]feature, len(s.parts))
-	for i, p := range s.parts {
-		have[i] = p.features()
-	}
 
 	// What agrees in everything.
 	choices := make([][]int, len(s.parts)) // expected parts for each piece: the right mark first, then the nearest place
-	for i, p := range s.parts {
+	for i := range s.parts {
+		p := &s.parts[i]
 		for _, k := range kinds {
-			if len(have[i]) != len(k.want) || edgeError(k.part.Outside, p.measure) > edgeLimit {
+			if len(p.holes) != len(k.part.Holes) || edgeError(k.part.Outside, p.measure) > edgeLimit {
 				continue
 			}
-			if f := lay(k.want, have[i], motionOf(k.part.Place)); f.out == 0 {
+			if f := lay(k.part, p, motionOf(k.part.Place)); f.out == 0 {
 				choices[i] = append(choices[i], k.members...)
 			}
 		}
-		at := have[i][0].at
+		at := outline.Point(p.measure.Middle)
 		sort.SliceStable(choices[i], func(a, b int) bool {
 			x, y := choices[i][a], choices[i][b]
 			markX, markY := s.marks[i].agrees(s.expected[x].Mark), s.marks[i].agrees(s.expected[y].Mark)
@@ -62,7 +58,7 @@ func (l *ledger) match(s *scene) {
 			free[piece] = false
 		}
 	}
-	s.pairLeftOver(partner, free, middle, have)
+	s.pairLeftOver(partner, free, middle)
 
 	l.count(partCount, len(s.expected))
 	for e, part := range s.expected {
@@ -74,7 +70,7 @@ func (l *ledger) match(s *scene) {
 			})
 			continue
 		}
-		l.compare(s, part, partner[e], have[partner[e]])
+		l.compare(s, part, partner[e])
 		l.mark(s, part, partner[e])
 	}
 	for i := range s.parts {
@@ -101,7 +97,7 @@ func kindsOf(parts []manifest.Part) []*kind {
 		}
 		k := byFigures[key]
 		if k == nil {
-			k = &kind{part: p, want: expectedFeatures(p)}
+			k = &kind{part: p}
 			byFigures[key] = k
 			kinds = append(kinds, k)
 		}
@@ -169,7 +165,7 @@ func augment(choices [][]int, partner []int, start int) {
 
 // pairLeftOver pairs what agreed with nothing: like shapes first, then the nearest place. Pieces far
 // from any place that is still open, with nothing in common, stay alone.
-func (s *scene) pairLeftOver(partner []int, free []bool, middle []outline.Point, have [][]feature) {
+func (s *scene) pairLeftOver(partner []int, free []bool, middle []outline.Point) {
 	var open, loose []int
 	for e, p := range partner {
 		if p < 0 {
@@ -190,14 +186,14 @@ func (s *scene) pairLeftOver(partner []int, free []bool, middle []outline.Point,
 	}
 	var pairs []pair
 	for _, e := range open {
-		want := expectedFeatures(s.expected[e])
+		part := s.expected[e]
 		for _, i := range loose {
-			p := pair{e: e, piece: i, d: middle[e].Dist(have[i][0].at)}
+			p := pair{e: e, piece: i, d: middle[e].Dist(outline.Point(s.parts[i].measure.Middle))}
 			if !s.placed {
 				p.d = 0
 			}
 			if !crowd {
-				p.in = len(want) - lay(want, have[i], motionOf(s.expected[e].Place)).out
+				p.in = 1 + len(part.Holes) - lay(part, &s.parts[i], motionOf(part.Place)).out
 			}
 			if p.in >= 2 || p.d < 1 {
 				pairs = append(pairs, p)

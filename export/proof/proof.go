@@ -19,8 +19,8 @@
 //     assignment among alike ones being as good as another (augmenting paths, D. König 1931; H. W.
 //     Kuhn 1955); then the rest, by their place on the sheet, so that it can be said what is wrong
 //     with them.
-//  6. Each pair is compared: centre distances, diameters, the area, perimeter and middle of every
-//     contour, which side is up, the engraving.
+//  6. Each pair is compared: centre distances, diameters, the area, perimeter, middle and turn of
+//     every contour, which side is up, the engraving.
 //  7. Distances on the sheet: between cuts of different parts, within a part, to the edge of the
 //     sheet, from engraving to cuts. All are exact on lines and arcs.
 //
@@ -140,7 +140,7 @@ func tasks(m manifest.Manifest) []task {
 			continue
 		}
 		alone := p
-		alone.Place.Flip = false
+		alone.Place = manifest.Placement{} // drawn as it is, wherever
 		all = append(all, task{
 			file: p.Drawing, name: p.Name, margin: -1, stock: stock[p.Stock], expected: []manifest.Part{alone},
 		})
