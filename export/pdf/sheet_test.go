@@ -297,6 +297,27 @@ func TestHairlines(t *testing.T) {
 	}
 }
 
+// What a reader is told: no scaling when printed, and a layer for every operation (ISO 32000-1, 12.2 and 8.11).
+func TestCatalogue(t *testing.T) {
+	data := string(write(t, sample.Sheet()))
+	if !strings.Contains(data, "/PrintScaling /None") {
+		t.Error("a print dialogue may scale the sheet")
+	}
+	layers := regexp.MustCompile(`(\d+) 0 obj\n<< /Type /OCG /Name <FEFF([0-9A-F]+)> >>`).FindAllStringSubmatch(data, -1)
+	if len(layers) != 3 {
+		t.Fatalf("layers %v", layers)
+	}
+	for i, op := range export.Operations() {
+		name := ""
+		for _, r := range op.String() {
+			name += fmt.Sprintf("%04X", r)
+		}
+		if layers[i][2] != name || !strings.Contains(data, fmt.Sprintf("/%v %s 0 R", op, layers[i][1])) {
+			t.Errorf("layer %v is %v", op, layers[i])
+		}
+	}
+}
+
 func TestErrors(t *testing.T) {
 	for want, s := range map[string][]export.Sheet{
 		"pdf: there is no sheet to write":                                                                               nil,

@@ -143,7 +143,7 @@ func (p *printer) run(segments []outline.Segment, closed bool) {
 	p.b.WriteString("M" + p.point(pieces[0].A))
 	for i, s := range pieces {
 		switch {
-		case math.Abs(s.Bulge)*s.A.Dist(s.B)/2 >= 2.5e-7:
+		case sagitta(s) >= flat:
 			radius := num(s.Radius())
 			// Sweep 1 is from x to y, which is clockwise to the eye as y points down.
 			sweep := "0"
@@ -151,7 +151,7 @@ func (p *printer) run(segments []outline.Segment, closed bool) {
 				sweep = "1"
 			}
 			p.b.WriteString("A" + radius + " " + radius + " 0 0 " + sweep + " " + p.point(s.B))
-		case !closed || i+1 < len(pieces): // an arc that leaves its chord by less than the digits show is a line
+		case !closed || i+1 < len(pieces):
 			p.b.WriteString("L" + p.point(s.B))
 		}
 	}
@@ -159,6 +159,13 @@ func (p *printer) run(segments []outline.Segment, closed bool) {
 		p.b.WriteByte('Z')
 	}
 }
+
+// flat is the height of an arc over its chord below which it is written as a line, mm: a tenth of a
+// micrometre, a tenth of what is promised. The centre of a flatter one is so far away that readers
+// lose more by computing it.
+const flat = 1e-4
+
+func sagitta(s outline.Segment) float64 { return math.Abs(s.Bulge) * s.A.Dist(s.B) / 2 }
 
 // point writes a point, y turned over.
 func (p *printer) point(q outline.Point) string { return num(q.X) + " " + num(p.height-q.Y) }

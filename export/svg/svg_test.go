@@ -109,11 +109,18 @@ func TestCurvesFromTheFile(t *testing.T) {
 			if d.parts[i] != step.Part || !strings.HasPrefix(d.groups[i], step.Op.String()) {
 				t.Fatalf("step %d is %s of %q, want %v of %q", i, d.groups[i], d.parts[i], step.Op, step.Part)
 			}
+			// The digits allow 1e-5; arcs (or pieces of them) no higher than 1e-4 over their chord are lines.
+			limit := 1e-5
+			for _, g := range segments {
+				if math.Abs(g.Bulge)*g.A.Dist(g.B)/2 < 1.01e-4 || g.A.Dist(g.B) < 0.01 {
+					limit = 1.1e-4
+				}
+			}
 			// Both ways: what is drawn is planned, and what is planned is drawn.
 			length := 0.0
 			for _, p := range d.paths[i] {
 				for k := 0; k <= 8; k++ {
-					if away := nearest(segments, p.at(float64(k)/8, s.Height)); away > 1e-5 {
+					if away := nearest(segments, p.at(float64(k)/8, s.Height)); away > limit {
 						t.Fatalf("step %d: %.7f mm off the plan", i, away)
 					}
 				}
@@ -123,7 +130,7 @@ func TestCurvesFromTheFile(t *testing.T) {
 			for _, g := range segments {
 				planned += g.Length()
 			}
-			if math.Abs(length-planned) > 1e-5*(1+float64(len(segments)))*4 {
+			if math.Abs(length-planned) > limit*(1+float64(len(segments)))*4 {
 				t.Fatalf("step %d: %.6f mm drawn, %.6f planned", i, length, planned)
 			}
 		}
