@@ -101,15 +101,15 @@ func lay(part manifest.Part, p *piece, usual outline.Transform) fit {
 		if best.out == 0 {
 			break
 		}
-		for p := range have {
-			for q := range have {
-				if p == q || (a.i == 0) != (p == 0) || (a.j == 0) != (q == 0) {
+		for i := range have {
+			for j := range have {
+				if i == j || (a.i == 0) != (i == 0) || (a.j == 0) != (j == 0) {
 					continue // the outside goes with the outside
 				}
-				if math.Abs(have[p].at.Dist(have[q].at)-a.d) > 2*limit {
+				if math.Abs(have[i].at.Dist(have[j].at)-a.d) > 2*limit {
 					continue
 				}
-				m := carry(want[a.i].at, want[a.j].at, have[p].at, have[q].at, usual.Mirror)
+				m := carry(want[a.i].at, want[a.j].at, have[i].at, have[j].at, usual.Mirror)
 				if f := try(m); f.better(best) {
 					best = f
 				}
