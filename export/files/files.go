@@ -27,7 +27,7 @@ type File struct {
 }
 
 // Listing tells which files a manifest names; an error says that the manifest is not ours. Listed
-// is the usual one.
+// is the usual one, and nil stands for it.
 type Listing func(manifest []byte) ([]string, error)
 
 // RefusedError says why a directory is not written to. Nothing was changed.
@@ -46,8 +46,8 @@ func (e *RefusedError) Error() string { return e.Dir + ": " + e.Why }
 //  1. The names of the set are checked, dir is resolved (a link to a directory is followed), and
 //     what lies there is sorted into ours (regular files that its manifest names, and the manifest)
 //     and the maker's (everything else). A file in the place of dir, a directory without a manifest
-//     of ours that holds anything, or a name of the set that is taken by something of the maker's
-//     is refused.
+//     of ours that holds anything, a name of the set that is taken by something of the maker's, and
+//     the directory that the program runs in are refused.
 //  2. The set is written to a new directory beside dir (".NAME.pinwright-new-..."), the manifest last,
 //     and flushed to the disk.
 //  3. The two directories change places: by one system call where there is one (Linux, macOS), else by
@@ -61,6 +61,9 @@ func (e *RefusedError) Error() string { return e.Dir + ": " + e.Why }
 // the next run puts the old one back first. Files of the maker's that a killed run left in the
 // directory beside are brought back by the next run too.
 func Commit(dir string, set []File, listing Listing) error {
+	if listing == nil {
+		listing = Listed
+	}
 	return commit(osDisk{}, dir, set, listing)
 }
 

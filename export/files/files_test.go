@@ -132,7 +132,7 @@ func Example() {
 	// The maker adds a note; a later run needs one sheet only.
 	_ = os.WriteFile(filepath.Join(out, "notes.txt"), []byte("cut slowly"), 0o666)
 	second := []File{first[0], {Name: Manifest, Data: []byte(`{"program": "pinwright", "files": [{"name": "clear3-1.dxf"}]}`)}}
-	if err := Commit(out, second, Listed); err != nil {
+	if err := Commit(out, second, nil); err != nil {
 		panic(err)
 	}
 	show()
@@ -161,6 +161,9 @@ func TestCommit(t *testing.T) {
 		{"a new directory", nil, "out", one, want(one), []string{"out"}},
 		{"parents that are missing", nil, "deep/er/out", one, want(one), []string{"deep"}},
 		{"an empty directory", func(t *testing.T, tmp string) { os.Mkdir(filepath.Join(tmp, "out"), 0o755) }, "out", one, want(one), []string{"out"}},
+		{"a directory that a file manager has looked into", func(t *testing.T, tmp string) {
+			put(t, filepath.Join(tmp, "out", ".DS_Store"), "mac")
+		}, "out", one, want(one, ".DS_Store", "mac"), []string{"out"}},
 		{"a second run", func(t *testing.T, tmp string) { commitOK(t, filepath.Join(tmp, "out"), one) }, "out", two, want(two), []string{"out"}},
 		{"files of the maker's stay", func(t *testing.T, tmp string) {
 			commitOK(t, filepath.Join(tmp, "out"), one)

@@ -21,7 +21,8 @@ type surveyed struct {
 
 // survey sorts what lies at place. A directory of the maker's in which nothing of ours lies is taken as
 // one thing, unless there is a directory of that name (slash-separated) where it is to go.
-// A missing or empty place is nobody's.
+// A missing or empty place is nobody's, and so is
+// one that only a file manager has written to.
 func survey(d disk, place string, listing Listing, shared func(dir string) bool) (surveyed, error) {
 	var s surveyed
 	info, err := d.lstat(place)
@@ -37,6 +38,12 @@ func survey(d disk, place string, listing Listing, shared func(dir string) bool)
 		return s, err
 	}
 	listed, err := readListing(d, place, listing)
+	if errors.Is(err, fs.ErrNotExist) && onlyDroppings(entries) {
+		for _, e := range entries {
+			s.foreign = append(s.foreign, e.Name())
+		}
+		return s, nil
+	}
 	if err != nil {
 		if errors.Is(err, fs.ErrNotExist) {
 			err = fmt.Errorf("there is no %s", Manifest)
@@ -151,6 +158,19 @@ func readListing(d disk, place string, listing Listing) ([]string, error) {
 		return nil, fmt.Errorf("%s is %w", Manifest, err)
 	}
 	return names, nil
+}
+
+// onlyDroppings tells whether there is nothing but what file managers leave in a directory that
+// somebody has looked into.
+func onlyDroppings(entries []fs.DirEntry) bool {
+	for _, e := range entries {
+		switch e.Name() {
+		case ".DS_Store", "Thumbs.db", "desktop.ini", ".directory":
+		default:
+			return false
+		}
+	}
+	return true
 }
 
 func firstNames(entries []fs.DirEntry) string {
