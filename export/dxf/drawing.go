@@ -21,7 +21,7 @@ type Drawing struct {
 // Layer is an entry of the layer table.
 type Layer struct {
 	Name   string
-	Colour int  // AutoCAD colour index
+	Colour int  // index of the DXF palette
 	Off    bool // switched off or frozen
 	Line   int  // where in the file
 }
@@ -30,7 +30,7 @@ type Layer struct {
 type Entity struct {
 	Type   string // LWPOLYLINE, CIRCLE, LINE, ARC, POLYLINE
 	Layer  string
-	Colour int             // AutoCAD colour index; 256: as the layer
+	Colour int             // index of the DXF palette; 256: as the layer
 	Closed outline.Outline // circles run counter-clockwise, polylines as they are drawn
 	Open   outline.Path
 	Circle *outline.Disc // of a CIRCLE: the numbers as the file has them

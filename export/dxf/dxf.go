@@ -7,7 +7,7 @@
 // drawing that was read is the drawing that was planned, bit for bit. No dates, names or random
 // identifiers are inside: the same sheet gives the same bytes.
 //
-// The format is that of the DXF Reference for AutoCAD 2000 (group codes, handles, owners, the
+// The format is that of the published DXF Reference (group codes, handles, owners, the
 // tables, blocks and objects that a complete drawing has).
 package dxf
 
@@ -68,7 +68,7 @@ func (u Units) String() string {
 
 // Options chooses the colours and extras of a drawing. The zero value is the usual drawing.
 type Options struct {
-	Engrave int // colour of the layers as AutoCAD colour index, 1 to 255; 0: the default
+	Engrave int // colour of the layers as index of the DXF palette, 1 to 255; 0: the default
 	Inside  int
 	Outside int
 	Edge    int
