@@ -44,23 +44,114 @@ type run struct {
 
 // tidy does the work of Clean: see there.
 func tidy(o Outline, tol float64) Outline {
-	runs := make([]run, 0, len(o))
-	// 1. Drop what has no length. A vertex goes with the last one kept.
+	// 1. Drop what has no length: a vertex goes with the last one kept.
 	vs := make(Outline, 0, len(o))
+	cs := make([]curve, 0, len(o))
 	for i := range o {
-		c := o.curve(i)
-		if c.len > 4*tol || c.a.Dist(c.b) > tol {
+		if c := o.curve(i); c.len > 4*tol || c.a.Dist(c.b) > tol {
 			vs = append(vs, o[i])
+			cs = append(cs, c)
 		}
 	}
 	if len(vs) < 2 {
 		return nil
 	}
-	for i := range vs {
-		c := vs.curve(i)
-		runs = append(runs, run{a: c.a, b: c.b, carrier: c, sweep: c.sweep(), pieces: 1})
+	if len(vs) < len(o) {
+		for i := range vs {
+			cs[i] = vs.curve(i)
+		}
 	}
-	// 2. Start at a true corner, so that no run is cut in two by the start.
+	if cs = withoutSpikes(cs, tol); len(cs) < 2 {
+		return nil
+	}
+	// 2. Mostly no segment goes on in the direction of the one before it, and nothing can be joined.
+	smooth := false
+	for i := range cs {
+		c, d := &cs[i], &cs[(i+1)%len(cs)]
+		if c.bends(d, tol) {
+			continue
+		}
+		smooth = true
+		break
+	}
+	if !smooth {
+		out := make(Outline, 0, len(cs)+2)
+		for i := range cs {
+			r := run{a: cs[i].a, b: cs[i].b, carrier: cs[i], sweep: cs[i].sweep(), pieces: 1}
+			out = r.write(out, tol)
+		}
+		return startLowest(out, tol)
+	}
+	return joinRuns(cs, tol)
+}
+
+// withoutSpikes removes places where the outline goes out and comes back the same way within the tolerance.
+func withoutSpikes(cs []curve, tol float64) []curve {
+	for i := 0; i < len(cs) && len(cs) > 1; {
+		n := len(cs)
+		j := (i + 1) % n
+		c, d := cs[i], cs[j]
+		if c.u.Dot(d.t) > -0.9 {
+			i++
+			continue
+		}
+		// The far end of the shorter one must lie on the longer one, and its middle too.
+		short, long, end := &c, &d, c.a
+		if d.len < c.len {
+			short, long, end = &d, &c, d.b
+		}
+		if _, ok := long.on(end, 4*tol); !ok || math.Abs(long.left(short.mid())) > 4*tol {
+			i++
+			continue
+		}
+		var rest curve
+		s := max(0, min(long.len, long.param(end)))
+		if d.len < c.len {
+			rest = newCurve(c.a, d.b, c.part(0, s))
+		} else {
+			rest = newCurve(c.a, d.b, d.part(s, d.len))
+		}
+		cs[i] = rest
+		cs = append(cs[:j], cs[j+1:]...)
+		if j == 0 {
+			i-- // the first one went, all others moved down
+		}
+		if rest.len <= 4*tol {
+			// Nothing is left of it: the neighbours meet. Its ends are one place but for the tolerance.
+			cs = append(cs[:i], cs[i+1:]...)
+			if m := len(cs); m > 0 {
+				b := &cs[(i+m-1)%m]
+				*b = newCurve(b.a, cs[i%m].a, b.bulge)
+			}
+		}
+		i = max(0, i-1)
+	}
+	return cs
+}
+
+// bends says that d goes on from the end of c in another direction than c arrives, or with another
+// curvature, by enough that they are no pieces of one line or circle. Over a short length l the one strays
+// from the other's circle by angle l + difference of curvature l^2/2; if that is within the tolerance at l and at
+// l/2, the first term is within 5 and the second within 6 tolerances.
+func (c *curve) bends(d *curve, tol float64) bool {
+	if (c.k == 0) != (d.k == 0) || c.k*d.k < 0 || c.u.Dot(d.t) <= 0 {
+		return true
+	}
+	l := min(c.len, d.len)
+	if math.Abs(c.u.Cross(d.t))*l > 10*tol {
+		return true
+	}
+	l = min(l, 0.5/max(c.k, -c.k, d.k, -d.k))
+	return math.Abs(c.k-d.k)*l*l/2 > 15*tol
+}
+
+// joinRuns joins the segments of a closed outline that are pieces of one line or circle.
+func joinRuns(cs []curve, tol float64) Outline {
+	runs := make([]run, len(cs))
+	for i, c := range cs {
+		runs[i] = run{a: c.a, b: c.b, carrier: c, sweep: c.sweep(), pieces: 1}
+	}
+	// 3. Start at a true corner, so that no run is cut in two by the start.
 	n := len(runs)
 	start := -1
 	for i := range runs {
@@ -73,7 +164,7 @@ func tidy(o Outline, tol float64) Outline {
 	if start < 0 {
 		start = 0
 	}
-	// 3. Join.
+	// 4. Join.
 	joined := make([]run, 0, n)
 	for i := range n {
 		r := runs[(start+i)%n]
@@ -92,12 +183,12 @@ func tidy(o Outline, tol float64) Outline {
 		}
 	}
 	if len(joined) == 1 {
-		if math.Abs(math.Abs(joined[0].sweep)-2*math.Pi) > 1e-6 {
+		if math.Abs(joined[0].sweep) < math.Pi {
 			return nil // a line there and back
 		}
 		return joined[0].circle()
 	}
-	// 4. Write.
+	// 5. Write.
 	out := make(Outline, 0, len(joined))
 	for i := range joined {
 		out = joined[i].write(out, tol)
@@ -108,6 +199,9 @@ func tidy(o Outline, tol float64) Outline {
 // join returns the run that continues r with s, if they are pieces of one line or one circle.
 func (r *run) join(s *run, tol float64) (run, bool) {
 	rc, sc := &r.carrier, &s.carrier
+	if r.pieces == 1 && s.pieces == 1 && rc.bends(sc, tol) {
+		return run{}, false
+	}
 	if (rc.k == 0) != (sc.k == 0) || rc.k*sc.k < 0 {
 		return run{}, false
 	}
@@ -126,7 +220,8 @@ func (r *run) join(s *run, tol float64) (run, bool) {
 		}
 		return r.with(s, line), true
 	}
-	if math.Abs(r.sweep+s.sweep) > 2*math.Pi+1e-6 || rc.u.Dot(sc.t) <= 0 && r.pieces == 1 && s.pieces == 1 {
+	// Sweeps of very short arcs are vague, so a full turn is not known exactly.
+	if math.Abs(r.sweep+s.sweep) > 2*math.Pi+0.1 || rc.u.Dot(sc.t) <= 0 && r.pieces == 1 && s.pieces == 1 {
 		return run{}, false
 	}
 	if rc.len >= sc.len {
@@ -181,16 +276,13 @@ func (r *run) write(out Outline, tol float64) Outline {
 		}
 		return append(out, Vertex{r.a, b})
 	}
-	// The turn about the centre from a to b, the one nearest to the sum of the pieces.
-	c := r.carrier.centre()
-	va, vb := r.a.Sub(c), r.b.Sub(c)
-	sweep := math.Atan2(va.Cross(vb), va.Dot(vb))
+	// The turn along the carrier from a to b, the one nearest to the sum of the pieces.
+	c := &r.carrier
+	sweep := c.k * (c.param(r.b) - c.param(r.a))
 	sweep += 2 * math.Pi * math.Round((r.sweep-sweep)/(2*math.Pi))
-	if radius := 1 / math.Abs(r.carrier.k); radius > 1e3*r.a.Dist(r.b) {
-		sweep = r.sweep // the centre is too far away to tell better
-	}
 	if math.Abs(sweep) > longestArc {
-		mid := c.Add(va.rot(math.Cos(sweep/2), math.Sin(sweep/2)))
+		centre := c.centre()
+		mid := centre.Add(r.a.Sub(centre).rot(math.Cos(sweep/2), math.Sin(sweep/2)))
 		return append(out, Vertex{r.a, math.Tan(sweep / 8)}, Vertex{mid, math.Tan(sweep / 8)})
 	}
 	b := math.Tan(sweep / 4)

@@ -18,9 +18,11 @@ import "math"
 //     centre and out again. No nearest way crosses a centre of curvature.
 //  3. At a corner that is convex in the direction of the offset: an arc about the corner.
 //  4. At a concave corner the sides of the two strips do not cancel: the curve goes to the corner and out
-//     again. If both strips are long compared with their overlap, the way from one end straight to the
-//     other does as well and leaves fewer edges: the triangle that it cuts off is covered by both strips,
-//     and no two such triangles overlap on one strip.
+//     again. Where the strips are long compared with their overlap, the curve is shortened: to where the
+//     two pieces cross, or, if the corner is so flat that this is badly determined, straight from one end
+//     to the other. What is cut off so lies in both strips, near the corner, and takes one from a
+//     winding number of at least 2; the cuts at both ends of a strip stay in their halves of it and so
+//     never take away twice.
 //
 // Shrinking is growing of what is not material: the same curve with d negative, and the material is
 // again where the winding number is at least 1.
@@ -46,8 +48,8 @@ func Offset(rs []Region, d float64) []Region {
 	for _, r := range rs {
 		for _, o := range r.Outlines() {
 			if o.usable() {
-				box = box.Union(o.Bounds())
-				size += 2 * len(o)
+				box = box.Union(o.looseBounds())
+				size += len(o)
 			}
 		}
 	}
@@ -55,21 +57,41 @@ func Offset(rs []Region, d float64) []Region {
 		return nil
 	}
 	tol := toleranceFor(box.Grow(max(0, d)))
-	return resolve(tol, size, func(w [2]int) bool { return w[0] >= 1 }, func(g *arrangement) {
-		var buf []Vertex
-		for _, r := range rs {
-			for i, o := range r.Outlines() {
-				if !o.usable() {
-					continue
-				}
-				if (o.Area() < 0) == (i == 0 && len(r.Outer) > 0) {
-					o = o.Reverse()
-				}
-				buf = rawOffset(buf[:0], o, d, tol)
-				g.add(buf, 0)
+	raw := make([]Vertex, 0, 2*size+size/2)
+	var ends []int
+	for _, r := range rs {
+		for i, o := range r.Outlines() {
+			if !o.usable() {
+				continue
 			}
+			if (o.Area() < 0) == (i == 0 && len(r.Outer) > 0) {
+				o = o.Reverse()
+			}
+			raw = rawOffset(raw, o, d, tol)
+			ends = append(ends, len(raw))
+		}
+	}
+	return resolve(tol, len(raw), func(w [2]int) bool { return w[0] >= 1 }, func(g *arrangement) {
+		begin := 0
+		for _, end := range ends {
+			g.add(raw[begin:end], 0)
+			begin = end
 		}
 	})
+}
+
+// looseBounds returns a box with the whole outline in it, cheaply.
+func (o Outline) looseBounds() Box {
+	b := EmptyBox()
+	belly := 0.0
+	for i, v := range o {
+		b.add(v.Point)
+		if v.Bulge != 0 {
+			s := o.segment(i)
+			belly = max(belly, s.A.Dist(s.B)*math.Abs(s.Bulge)/2)
+		}
+	}
+	return b.Grow(belly)
 }
 
 // overlapping says whether the boxes of two regions meet.
@@ -141,56 +163,4 @@ func Stroke(p Path, r float64) []Region {
 	return resolve(tol, 4*len(there), func(w [2]int) bool { return w[0] >= 1 }, func(g *arrangement) {
 		g.add(rawOffset(nil, there, r, tol), 0)
 	})
-}
-
-// rawOffset appends the raw curve of o at distance d to its right.
-func rawOffset(buf []Vertex, o Outline, d, tol float64) []Vertex {
-	n := len(o)
-	cs := make([]curve, 0, n)
-	for i := range o {
-		if c := o.curve(i); c.len > 4*tol || c.a.Dist(c.b) > tol {
-			cs = append(cs, c)
-		}
-	}
-	for i := range cs {
-		c := &cs[i]
-		next := &cs[0]
-		if i+1 < len(cs) {
-			next = &cs[i+1]
-		}
-		a := Point{c.a.X + d*c.t.Y, c.a.Y - d*c.t.X}
-		b := Point{c.b.X + d*c.u.Y, c.b.Y - d*c.u.X}
-		if 1+d*c.k > 0 {
-			buf = append(buf, Vertex{a, c.bulge})
-		} else {
-			buf = append(buf, Vertex{Point: a}, Vertex{Point: c.centre()})
-		}
-		start := Point{next.a.X + d*next.t.Y, next.a.Y - d*next.t.X}
-		if b.Dist(start) <= tol/4 {
-			continue // the segments go on in one direction
-		}
-		cross, dot := c.u.Cross(next.t), c.u.Dot(next.t)
-		back := dot < 0 && math.Abs(cross) < 1e-9 // a cusp, in or out: a sector is right either way
-		if cross*d > 0 || back {
-			turn := math.Atan2(cross, dot)
-			if turn*d < 0 {
-				turn += math.Copysign(2*math.Pi, d)
-			}
-			buf = append(buf, Vertex{b, math.Tan(turn / 4)})
-			continue
-		}
-		buf = append(buf, Vertex{Point: b})
-		overlap := 2 * math.Abs(d*cross)
-		if dot > 0.5 && c.strip(d) >= overlap && next.strip(d) >= overlap {
-			continue
-		}
-		buf = append(buf, Vertex{Point: next.a})
-	}
-	return buf
-}
-
-// strip returns the shorter side of the strip between the curve and its offset, 0 when it ends at the
-// centre.
-func (c *curve) strip(d float64) float64 {
-	return c.len * max(0, min(1, 1+d*c.k))
 }

@@ -8,7 +8,8 @@ import (
 
 // randomPiece returns a random simple shape. On the lattice, coordinates, radii and angles come from small
 // sets, so that coincident edges, tangent circles and shared corners are frequent.
-func randomPiece(r *rand.Rand, lattice bool) Region {
+func randomPiece(r *rand.Rand, k kind) Region {
+	lattice := k != general
 	num := func(lo, hi int) float64 {
 		if lattice {
 			return float64(lo + r.IntN(hi-lo+1))
@@ -60,14 +61,31 @@ func randomPiece(r *rand.Rand, lattice bool) Region {
 		t.Move = c.Sub(t.Apply(c))
 		reg = reg.Transform(t)
 	}
+	if k == nearLattice {
+		// Off the lattice by something between rounding and visible, so that some contacts are within the
+		// tolerance and some are not.
+		e := math.Pow(10, -6-8*r.Float64())
+		reg = reg.Transform(Place(e*(r.Float64()-0.5), false, Point{e * (r.Float64() - 0.5), e * (r.Float64() - 0.5)}))
+	}
 	return reg
 }
 
+// kind is how degenerate random shapes are.
+type kind int
+
+const (
+	general kind = iota
+	onLattice
+	nearLattice
+)
+
+var kinds = []kind{general, onLattice, nearLattice}
+
 // randomShape is a union or difference of several random pieces.
-func randomShape(t testing.TB, r *rand.Rand, lattice bool) []Region {
-	rs := []Region{randomPiece(r, lattice)}
+func randomShape(t testing.TB, r *rand.Rand, k kind) []Region {
+	rs := []Region{randomPiece(r, k)}
 	for range r.IntN(4) {
-		n := []Region{randomPiece(r, lattice)}
+		n := []Region{randomPiece(r, k)}
 		switch r.IntN(3) {
 		case 0, 1:
 			rs = Union(append(rs, n...)...)
@@ -128,10 +146,10 @@ func margin(rs []Region, p Point) float64 {
 }
 
 func TestBooleansOnRandomShapes(t *testing.T) {
-	for _, lattice := range []bool{false, true} {
+	for _, k := range kinds {
 		for seed := range uint64(cases) {
-			r := rand.New(rand.NewPCG(seed, 7))
-			a, b := randomShape(t, r, lattice), randomShape(t, r, lattice)
+			r := rand.New(rand.NewPCG(seed, seedBooleans))
+			a, b := randomShape(t, r, k), randomShape(t, r, k)
 			u := Union(append(append([]Region(nil), a...), b...)...)
 			i := Intersection(a, b)
 			d := Difference(a, b)
@@ -147,7 +165,7 @@ func TestBooleansOnRandomShapes(t *testing.T) {
 			check := func(what string, got, want float64) {
 				if math.Abs(got-want) > tol {
 					bad = true
-					t.Errorf("lattice %v seed %d: %s: %.12g, want %.12g", lattice, seed, what, got, want)
+					t.Errorf("kind %v seed %d: %s: %.12g, want %.12g", k, seed, what, got, want)
 				}
 			}
 			check("area of union and intersection", Area(u)+Area(i), Area(a)+Area(b))
@@ -166,7 +184,7 @@ func TestBooleansOnRandomShapes(t *testing.T) {
 				}{{"union", u, ia || ib}, {"intersection", i, ia && ib}, {"difference", d, ia && !ib}, {"symmetric difference", x, ia != ib}} {
 					if got := inAny(c.rs, p) == Inside; got != c.want {
 						bad = true
-						t.Errorf("lattice %v seed %d: %s at %v is %v, want %v", lattice, seed, c.what, p, got, c.want)
+						t.Errorf("kind %v seed %d: %s at %v is %v, want %v", k, seed, c.what, p, got, c.want)
 					}
 				}
 			}
@@ -178,15 +196,20 @@ func TestBooleansOnRandomShapes(t *testing.T) {
 }
 
 func TestOffsetOnRandomShapes(t *testing.T) {
-	for _, lattice := range []bool{false, true} {
+	for _, k := range kinds {
 		for seed := range uint64(cases) {
-			r := rand.New(rand.NewPCG(seed, 11))
-			a := randomShape(t, r, lattice)
+			r := rand.New(rand.NewPCG(seed, seedOffsets))
+			a := randomShape(t, r, k)
 			d := r.Float64()*3 - 1.5
-			if lattice {
+			if k != general {
 				d = []float64{-2, -1.5, -1, -0.5, 0.5, 1, 1.5, 2}[r.IntN(8)]
 			}
 			o := Offset(a, d)
+			// Off the lattice short arcs fix their directions badly, and a second try may have been needed.
+			close := 2e-8
+			if k == nearLattice {
+				close = 1e-6
+			}
 			valid(t, "offset", o)
 			// Every vertex and middle of the result is at exactly |d| from the original.
 			for _, reg := range o {
@@ -194,8 +217,8 @@ func TestOffsetOnRandomShapes(t *testing.T) {
 					for _, s := range ol.Segments() {
 						for _, f := range []float64{0, 0.5} {
 							p := s.At(f)
-							if m := margin(a, p); math.Abs(m-math.Abs(d)) > 2e-8 {
-								t.Fatalf("lattice %v seed %d: offset %g: %v is %.12g from the outline\na = %#v", lattice, seed, d, p, m, a)
+							if m := margin(a, p); math.Abs(m-math.Abs(d)) > close {
+								t.Fatalf("kind %v seed %d: offset %g: %v is %.12g from the outline\na = %#v", k, seed, d, p, m, a)
 							}
 						}
 					}
@@ -210,7 +233,7 @@ func TestOffsetOnRandomShapes(t *testing.T) {
 				in := inAny(a, p) == Inside
 				want := in && (d > 0 || m > -d) || !in && d > 0 && m < d
 				if got := inAny(o, p) == Inside; got != want {
-					t.Fatalf("lattice %v seed %d: offset %g at %v is %v, want %v\na = %#v\no = %#v", lattice, seed, d, p, got, want, a, o)
+					t.Fatalf("kind %v seed %d: offset %g at %v is %v, want %v\na = %#v\no = %#v", k, seed, d, p, got, want, a, o)
 				}
 			}
 		}

@@ -1,3 +1,7 @@
 package outline
 
-const cases = 3000
+const (
+	cases        = 400
+	seedBooleans = 1177
+	seedOffsets  = 1178
+)

@@ -11,21 +11,22 @@ func sweepPairs(boxes []Box, tol float64, meet func(i, j int32)) {
 	}
 	all := EmptyBox()
 	var w, h float64
-	for _, b := range boxes {
-		all = all.Union(b)
-		w += b.Width()
-		h += b.Height()
+	for i := range boxes {
+		b := &boxes[i]
+		all = all.Union(*b)
+		w += b.Max.X - b.Min.X
+		h += b.Max.Y - b.Min.Y
 	}
 	alongX := all.Width()*h >= all.Height()*w
-	items := make([]item, len(boxes))
-	for i, b := range boxes {
-		if alongX {
-			items[i] = item{b.Min.X - tol, b.Max.X, b.Min.Y - tol, b.Max.Y, int32(i)}
-		} else {
-			items[i] = item{b.Min.Y - tol, b.Max.Y, b.Min.X - tol, b.Max.X, int32(i)}
+	keys := make([]sweepKey, len(boxes))
+	for i := range boxes {
+		lo := boxes[i].Min.X
+		if !alongX {
+			lo = boxes[i].Min.Y
 		}
+		keys[i] = sweepKey{lo - tol, int32(i)}
 	}
-	slices.SortFunc(items, func(a, b item) int {
+	slices.SortFunc(keys, func(a, b sweepKey) int {
 		switch {
 		case a.lo < b.lo:
 			return -1
@@ -34,6 +35,15 @@ func sweepPairs(boxes []Box, tol float64, meet func(i, j int32)) {
 		}
 		return int(a.i - b.i)
 	})
+	items := make([]item, len(boxes))
+	for x, k := range keys {
+		b := &boxes[k.i]
+		if alongX {
+			items[x] = item{k.lo, b.Max.X, b.Min.Y - tol, b.Max.Y, k.i}
+		} else {
+			items[x] = item{k.lo, b.Max.Y, b.Min.X - tol, b.Max.X, k.i}
+		}
+	}
 	for x := range items {
 		a := &items[x]
 		for y := x + 1; y < len(items); y++ {
@@ -46,6 +56,12 @@ func sweepPairs(boxes []Box, tol float64, meet func(i, j int32)) {
 			}
 		}
 	}
+}
+
+// sweepKey is where a box begins along the axis.
+type sweepKey struct {
+	lo float64
+	i  int32
 }
 
 // item is a box in the sweep: its extent along the axis and across it, the lower ends moved out by the

@@ -38,6 +38,10 @@ const largestBulge = 1e6
 // nearly full turn fixes its radius badly.
 const longestArc = 1.5 * math.Pi
 
+// longestTouch is the length over which curves may be coincident and still only touch: circles with radii
+// of 20 and 20.1 mm that touch from inside are within the tolerance of each other over 0.006 mm.
+const longestTouch = 0.02 // mm
+
 // toleranceFor returns the tolerance for shapes within the box.
 func toleranceFor(b Box) float64 {
 	if b.Empty() {

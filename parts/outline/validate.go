@@ -160,18 +160,63 @@ func contacts(os []Outline) *Fault {
 		first = [2]int32{i, j}
 		*f = fault(kind, p, "%s and %s %s at (%.6g, %.6g)", name(i), name(j), what, p.X, p.Y)
 	}
-	// around returns the curves that arrive at and leave the place p of curve i.
-	around := func(i int32, p Point) (in, out *curve) {
+	// walk returns the point at the distance l along the outline from the place s on curve i, backwards if l
+	// is negative.
+	walk := func(i int32, s, l float64) Point {
 		pl := at[i]
-		n := int32(len(os[pl.outline]))
-		base := i - int32(pl.segment)
-		if cs[i].a.Dist(p) <= 4*tol {
-			return &cs[base+(i-base+n-1)%n], &cs[i]
+		n := len(os[pl.outline])
+		base, k := int(i)-pl.segment, pl.segment
+		for range n {
+			c := &cs[base+k]
+			switch s += l; {
+			case s > c.len:
+				l, s = s-c.len, 0
+				k = (k + 1) % n
+			case s < 0:
+				k = (k + n - 1) % n
+				l, s = s, cs[base+k].len
+			default:
+				return c.at(s)
+			}
 		}
-		if cs[i].b.Dist(p) <= 4*tol {
-			return &cs[i], &cs[base+(i-base+1)%n]
+		return cs[i].at(s)
+	}
+	// reach returns how far from the place s on curve i the nearest corner of its outline is, other than one
+	// at the place itself.
+	reach := func(i int32, s float64) float64 {
+		pl := at[i]
+		n := len(os[pl.outline])
+		base := int(i) - pl.segment
+		before, after := s, cs[i].len-s
+		if before <= 8*tol {
+			before = cs[base+(pl.segment+n-1)%n].len
 		}
-		return &cs[i], &cs[i]
+		if after <= 8*tol {
+			after = cs[base+(pl.segment+1)%n].len
+		}
+		return min(before, after)
+	}
+	// cross says whether the outlines through p, on the curves i and j, cross there: whether they alternate
+	// round p, seen from a little way off.
+	cross := func(i, j int32, p Point) bool {
+		si, sj := cs[i].param(p), cs[j].param(p)
+		// Small against what is near, but large against the tolerance.
+		step := max(16*tol, min(reach(i, si), reach(j, sj))/4)
+		back := walk(i, si, -step).Sub(p)
+		turn := func(v Point) float64 {
+			a := math.Atan2(back.Cross(v), back.Dot(v))
+			if a < 0 {
+				a += 2 * math.Pi
+			}
+			return a
+		}
+		on := turn(walk(i, si, step).Sub(p))
+		x, y := turn(walk(j, sj, -step).Sub(p)), turn(walk(j, sj, step).Sub(p))
+		same := 4 * tol / step // directions that close are one within the tolerance: a touch
+		if math.Abs(x-on) < same || math.Abs(y-on) < same || min(x, 2*math.Pi-x) < same || min(y, 2*math.Pi-y) < same {
+			return false
+		}
+		return (x < on) != (y < on)
 	}
 	sweepPairs(boxes, tol, func(i, j int32) {
 		c, d := &cs[i], &cs[j]
@@ -194,15 +239,13 @@ func contacts(os []Outline) *Fault {
 		for k := 1; k < len(pts); k++ {
 			s0, s1 := c.param(pts[k-1]), c.param(pts[k])
 			m := c.at((s0 + s1) / 2)
-			if _, ok := d.on(m, tol); ok && s1-s0 > 4*tol && s1-s0 > 4*math.Sqrt(tol) {
+			if _, ok := d.on(m, tol); ok && s1-s0 > longestTouch {
 				report(&crossing, FaultCrossing, i, j, m, "run along each other")
 				return
 			}
 		}
 		for _, p := range rest {
-			ci, co := around(i, p)
-			di, do := around(j, p)
-			if strandsCross(ci, co, di, do, p) {
+			if cross(i, j, p) {
 				report(&crossing, FaultCrossing, i, j, p, "cross")
 				return
 			}
@@ -215,40 +258,4 @@ func contacts(os []Outline) *Fault {
 		return crossing
 	}
 	return touching
-}
-
-// strandsCross says whether the way ci, co through p crosses the way di, do: whether they alternate round p,
-// seen from a little way off.
-func strandsCross(ci, co, di, do *curve, p Point) bool {
-	step := min(ci.len, co.len, di.len, do.len) / 4
-	if ci == co {
-		s := ci.param(p)
-		step = min(step, s/2, (ci.len-s)/2)
-	}
-	if di == do {
-		s := di.param(p)
-		step = min(step, s/2, (di.len-s)/2)
-	}
-	dir := func(c *curve, forward bool) Point {
-		s := c.param(p)
-		if forward {
-			return c.at(s + step).Sub(p)
-		}
-		return c.at(s - step).Sub(p)
-	}
-	base := dir(ci, false)
-	turn := func(v Point) float64 {
-		a := math.Atan2(base.Cross(v), base.Dot(v))
-		if a < 0 {
-			a += 2 * math.Pi
-		}
-		return a
-	}
-	out := turn(dir(co, true))
-	x, y := turn(dir(di, false)), turn(dir(do, true))
-	const same = 1e-9
-	if math.Abs(x-out) < same || math.Abs(y-out) < same || x < same || y < same {
-		return false
-	}
-	return (x < out) != (y < out)
 }
