@@ -40,6 +40,7 @@ type Hole struct {
 	Joint    string // the joint it sits on, or ""
 	Centre   outline.Point
 	Diameter float64 // finished, mm; 0 when it is not round
+	Width    float64 // narrowest way across, mm: the diameter of a round one; 0 for a window
 }
 
 // Mark is what is engraved: single strokes, and the text they spell.
