@@ -47,6 +47,8 @@ type arrangement struct {
 	head     []int32 // first split of each curve, or -1
 	splits   []split
 	touching [][2]int32 // pairs of curves that have a point in common
+	met      bool       // something meets, other than neighbours in a contour
+	starts   []int32    // first curve of each contour
 	edges    []edge
 }
 
@@ -96,6 +98,7 @@ func (g *arrangement) root(v int32) int32 {
 // unite makes two nodes one place; the older one keeps its coordinates, so that vertices of the input
 // stay where they are.
 func (g *arrangement) unite(v, w int32) {
+	g.met = true
 	v, w = g.root(v), g.root(w)
 	if v < w {
 		g.parent[w] = v
@@ -111,6 +114,7 @@ func (g *arrangement) add(o []Vertex, operand int8) {
 	}
 	first := g.node(o[0].Point)
 	begin := len(g.curves)
+	g.starts = append(g.starts, int32(begin))
 	cur := first
 	for i := range o {
 		last := i == len(o)-1
@@ -162,6 +166,7 @@ func (g *arrangement) hit(i int32, s float64, v int32) {
 	case s >= g.curves[i].len-g.tol:
 		g.unite(v, g.ends[i][1])
 	default:
+		g.met = true
 		g.splits = append(g.splits, split{s, v, g.head[i]})
 		g.head[i] = int32(len(g.splits) - 1)
 	}
@@ -447,10 +452,74 @@ func (g *arrangement) incidence() incidence {
 	return a
 }
 
-// boundary returns the boundary of where inside holds for the winding numbers of the two operands, as
-// directed edges with the inside on the left. ok is false if they do not close up.
-func (g *arrangement) boundary(inside func(w [2]int) bool) (kept []edge, ok bool) {
+// loops returns the boundary of where inside holds for the winding numbers of the two operands, as outlines
+// with the inside on the left. ok is false if they do not close up.
+func (g *arrangement) loops(inside func(w [2]int) bool) (out []loop, ok bool) {
 	sweepPairs(g.boxes, g.tol, g.meet)
+	if !g.met && len(g.starts) <= 32 {
+		return g.apart(inside), true
+	}
+	kept, ok := g.boundary(inside)
+	return g.trace(kept), ok
+}
+
+// apart is the short way for contours none of which meets itself or another: each of them is boundary or is
+// not.
+func (g *arrangement) apart(inside func(w [2]int) bool) []loop {
+	type own struct {
+		lo, hi int32
+		turned bool
+	}
+	var keep []own
+	for k, lo := range g.starts {
+		hi := int32(len(g.curves))
+		if k+1 < len(g.starts) {
+			hi = g.starts[k+1]
+		}
+		if lo == hi {
+			continue
+		}
+		sample := lo
+		for i := lo; i < hi; i++ {
+			if g.curves[i].len > g.curves[sample].len {
+				sample = i
+			}
+		}
+		p := g.curves[sample].mid()
+		var left [2]int
+		for i := range g.curves {
+			if int32(i) != sample {
+				left[g.operand[i]] += g.curves[i].wind(p)
+			}
+		}
+		left[g.operand[sample]] += beside(g.curves[sample].a, g.curves[sample].b, p)
+		right := left
+		right[g.operand[sample]]--
+		l, r := inside(left), inside(right)
+		if l == r {
+			continue
+		}
+		keep = append(keep, own{lo, hi, r})
+	}
+	var out []loop
+	for _, k := range keep {
+		cs := g.curves[k.lo:k.hi:k.hi]
+		if k.turned {
+			slices.Reverse(cs)
+			for i := range cs {
+				cs[i] = cs[i].reverse()
+			}
+		}
+		if l, ok := newLoop(tidyCurves(cs, g.tol), g.tol); ok {
+			out = append(out, l)
+		}
+	}
+	return out
+}
+
+// boundary returns the edges of the boundary, directed, the inside on their left. ok is false if they do not
+// close up.
+func (g *arrangement) boundary(inside func(w [2]int) bool) (kept []edge, ok bool) {
 	g.settle()
 	g.cut()
 	chains := g.chains()

@@ -35,11 +35,11 @@ func combine(a, b []Region, inside func(w [2]int) bool) []Region {
 				if !o.usable() {
 					continue
 				}
-				if (o.Area() < 0) == (i == 0 && len(r.Outer) > 0) {
+				if o.clockwise() == (i == 0 && len(r.Outer) > 0) {
 					o = o.Reverse()
 				}
 				contours[k] = append(contours[k], o)
-				box = box.Union(o.Bounds())
+				box = box.Union(o.looseBounds())
 				size += len(o)
 			}
 		}
@@ -62,11 +62,10 @@ func resolve(tol float64, size int, inside func(w [2]int) bool, fill func(g *arr
 	for {
 		g := newArrangement(tol, size+8)
 		fill(g)
-		kept, ok := g.boundary(inside)
-		if !ok && tol*8 <= largestRetry {
-			tol *= 8
-			continue
+		loops, ok := g.loops(inside)
+		if ok || tol*8 > largestRetry {
+			return regionsOf(loops)
 		}
-		return regionsOf(g.trace(kept))
+		tol *= 8
 	}
 }

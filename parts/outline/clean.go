@@ -61,6 +61,11 @@ func tidy(o Outline, tol float64) Outline {
 			cs[i] = vs.curve(i)
 		}
 	}
+	return tidyCurves(cs, tol)
+}
+
+// tidyCurves does the rest of tidy for curves with a length. It may overwrite cs.
+func tidyCurves(cs []curve, tol float64) Outline {
 	if cs = withoutSpikes(cs, tol); len(cs) < 2 {
 		return nil
 	}

@@ -215,8 +215,11 @@ func (c *curve) part(s0, s1 float64) float64 {
 	if c.k == 0 {
 		return 0
 	}
-	if s0 == 0 && s1 == c.len {
+	switch {
+	case s0 == 0 && s1 == c.len:
 		return c.bulge
+	case s0 == c.len && s1 == 0:
+		return -c.bulge
 	}
 	return math.Tan(c.k * (s1 - s0) / 4)
 }

@@ -16,6 +16,39 @@ func (o Outline) Area() float64 {
 	return sum
 }
 
+// roughArea returns the area within slack of the true one, without trigonometry.
+func (o Outline) roughArea() (area, slack float64) {
+	if len(o) < 2 {
+		return 0, 0
+	}
+	ref := o[0].Point
+	v := o[len(o)-1]
+	for _, w := range o {
+		area += v.Sub(ref).Cross(w.Sub(ref)) / 2
+		if v.Bulge != 0 {
+			// Up to a half circle the area of the segment is bulge chord^2 (1/3 to pi/8).
+			l := v.Sub(w.Point)
+			part := v.Bulge * l.Dot(l)
+			area += 0.36 * part
+			slack += 0.04 * math.Abs(part)
+			if math.Abs(v.Bulge) > 1 {
+				return o.Area(), 0
+			}
+		}
+		v = w
+	}
+	return area, slack
+}
+
+// clockwise says whether the outline runs clockwise.
+func (o Outline) clockwise() bool {
+	a, slack := o.roughArea()
+	if math.Abs(a) <= slack {
+		a = o.Area()
+	}
+	return a < 0
+}
+
 // segmentArea returns the area between the chord and the arc of s, positive when the arc turns left:
 // r^2/2 (w - sin w) for the sweep w.
 func segmentArea(s Segment) float64 {

@@ -64,7 +64,7 @@ func Offset(rs []Region, d float64) []Region {
 			if !o.usable() {
 				continue
 			}
-			if (o.Area() < 0) == (i == 0 && len(r.Outer) > 0) {
+			if o.clockwise() == (i == 0 && len(r.Outer) > 0) {
 				o = o.Reverse()
 			}
 			raw = rawOffset(raw, o, d, tol)

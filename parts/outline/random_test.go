@@ -1,6 +1,7 @@
 package outline
 
 import (
+	"errors"
 	"math"
 	"math/rand/v2"
 	"testing"
@@ -93,15 +94,22 @@ func randomShape(t testing.TB, r *rand.Rand, k kind) []Region {
 			rs = Difference(rs, n)
 		}
 	}
-	valid(t, "random shape", rs)
+	valid(t, "random shape", rs, k)
 	return rs
 }
 
 // valid fails unless all regions are valid, but for touches in single points, and apart from each other.
-func valid(t testing.TB, what string, rs []Region) {
+//
+// Near the lattice results can have gaps and slivers that are just wider than the tolerance at one end: there
+// outlines may also run along each other.
+func valid(t testing.TB, what string, rs []Region, k kind) {
 	t.Helper()
+	fine := func(err error) bool {
+		var f *Fault
+		return err == nil || Touching(err) || k == nearLattice && errors.As(err, &f) && f.Kind == FaultAlong
+	}
 	for i, r := range rs {
-		if err := r.Validate(); err != nil && !Touching(err) {
+		if err := r.Validate(); !fine(err) {
 			t.Fatalf("%s: region %d of %d: %v\n%v", what, i, len(rs), err, r)
 		}
 		for _, o := range r.Outlines() {
@@ -116,7 +124,7 @@ func valid(t testing.TB, what string, rs []Region) {
 	for _, r := range rs {
 		all = append(all, r.Outlines()...)
 	}
-	if f := contacts(all); f != nil && f.Kind != FaultTouching {
+	if f := contacts(all); f != nil && !fine(f) {
 		t.Fatalf("%s: regions meet: %v\n%v", what, f, rs)
 	}
 }
@@ -158,7 +166,7 @@ func TestBooleansOnRandomShapes(t *testing.T) {
 				what string
 				rs   []Region
 			}{{"union", u}, {"intersection", i}, {"difference", d}, {"symmetric difference", x}} {
-				valid(t, c.what, c.rs)
+				valid(t, c.what, c.rs, k)
 			}
 			const tol = 1e-6 // contours of some 100 mm within the tolerance of 1e-9 mm, with a reserve
 			bad := false
@@ -210,7 +218,7 @@ func TestOffsetOnRandomShapes(t *testing.T) {
 			if k == nearLattice {
 				close = 1e-6
 			}
-			valid(t, "offset", o)
+			valid(t, "offset", o, k)
 			// Every vertex and middle of the result is at exactly |d| from the original.
 			for _, reg := range o {
 				for _, ol := range reg.Outlines() {

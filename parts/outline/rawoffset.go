@@ -81,8 +81,10 @@ func (x *displaced) joinTo(next *displaced, d, tol float64) {
 		return
 	}
 	cross, dot := x.u.Cross(next.t), x.u.Dot(next.t)
-	if cross*d > 0 || dot < 0 && math.Abs(cross) < 1e-9 {
-		x.join = sector // for a cusp, in or out, a sector is right either way
+	// At a cusp the tangents do not tell in from out: curves that touch and part again have the same ones, up
+	// to rounding either way. A sector is right in any case, for it lies within d of the corner.
+	if cross*d > 0 || dot < 0 && math.Abs(cross) < 1e-3 {
+		x.join = sector
 		return
 	}
 	x.join = inAndOut

@@ -2,6 +2,6 @@ package outline
 
 const (
 	cases        = 400
-	seedBooleans = 1177
-	seedOffsets  = 1178
+	seedBooleans = 31177
+	seedOffsets  = 31178
 )

@@ -19,11 +19,11 @@ import (
 //
 // What does not close (see arrangement.go) is dropped.
 
-func (g *arrangement) trace(kept []edge) []Outline {
+func (g *arrangement) trace(kept []edge) []loop {
 	out := incidenceOut(kept, len(g.nodes))
 	used := make([]bool, len(kept))
 	place := make([]int32, len(g.nodes)) // 1 + where on the walk a node was left
-	var result []Outline
+	var result []loop
 	walk := make([]int32, 0, len(kept))
 	for i := range kept {
 		if used[i] {
@@ -38,11 +38,11 @@ func (g *arrangement) trace(kept []edge) []Outline {
 			walk = append(walk, cur)
 			if p := place[e.to]; p > 0 {
 				// Back at a node: cut the loop out.
-				loop := walk[p-1:]
-				if o := g.outline(kept, loop); o != nil {
-					result = append(result, o)
+				round := walk[p-1:]
+				if l, ok := g.loop(kept, round); ok {
+					result = append(result, l)
 				}
-				for _, k := range loop {
+				for _, k := range round {
 					place[kept[k].from] = 0
 				}
 				walk = walk[:p-1]
@@ -124,74 +124,90 @@ func (g *arrangement) leftmost(kept []edge, out *incidence, used []bool, e *edge
 	return best
 }
 
-// outline makes a loop of edges an outline; nil if nothing of it is left.
-func (g *arrangement) outline(kept []edge, loop []int32) Outline {
-	o := make(Outline, 0, len(loop))
-	for x := 0; x < len(loop); {
-		e := kept[loop[x]]
+// loop is a closed outline and which way it runs.
+type loop struct {
+	o    Outline
+	hole bool
+}
+
+// loop makes an outline of the edges; not ok if nothing of it is left.
+func (g *arrangement) loop(kept []edge, edges []int32) (l loop, ok bool) {
+	cs := make([]curve, 0, len(edges))
+	for x := 0; x < len(edges); {
+		e := kept[edges[x]]
 		y := x + 1
-		for y < len(loop) {
-			f := &kept[loop[y]]
-			if f.curve != e.curve || (f.s1 > f.s0) != (e.s1 > e.s0) || (e.s1 < f.s0) != (e.s0 < e.s1) && e.s1 != f.s0 {
+		for y < len(edges) {
+			f := &kept[edges[y]]
+			if f.curve != e.curve || (f.s1 > f.s0) != (e.s1 > e.s0) || (f.s0 > e.s0) != (e.s1 > e.s0) {
 				break
 			}
 			e.s1, e.to = f.s1, f.to
 			y++
 		}
 		c := &g.curves[e.curve]
-		v := Vertex{Point: g.nodes[e.from]}
+		a, b := g.nodes[e.from], g.nodes[e.to]
 		switch {
-		case e.s0 == 0 && e.s1 == c.len:
-			v.Bulge = c.bulge
-		case e.s0 == c.len && e.s1 == 0:
-			v.Bulge = -c.bulge
+		case e.s0 == 0 && e.s1 == c.len && a == c.a && b == c.b:
+			cs = append(cs, *c)
+		case e.s0 == c.len && e.s1 == 0 && a == c.b && b == c.a:
+			cs = append(cs, c.reverse())
 		default:
-			v.Bulge = c.part(e.s0, e.s1)
+			cs = append(cs, newCurve(a, b, c.part(e.s0, e.s1)))
 		}
-		o = append(o, v)
 		x = y
 	}
-	if len(o) < 2 {
-		return nil
-	}
-	o = tidy(o, g.tol)
-	if o == nil || math.Abs(o.Area()) <= g.tol*o.Length() {
-		return nil
-	}
-	return o
+	return newLoop(tidyCurves(cs, g.tol), g.tol)
 }
 
-// regions sorts loops into outer outlines and their holes.
-func regionsOf(loops []Outline) []Region {
-	var outs, holes []Outline
-	for _, o := range loops {
-		if o.Area() > 0 {
-			outs = append(outs, o)
-		} else {
-			holes = append(holes, o)
+// newLoop measures an outline; not ok if it is empty or thinner than the tolerance.
+func newLoop(o Outline, tol float64) (l loop, ok bool) {
+	if o == nil {
+		return loop{}, false
+	}
+	// Large ones cannot be too thin, however long they are.
+	a, slack := o.roughArea()
+	if math.Abs(a) <= 2*slack+tol*largestCoordinate {
+		a = o.Area()
+		if b := math.Abs(a); b <= tol*largestCoordinate && b <= tol*o.Length() {
+			return loop{}, false
 		}
 	}
-	slices.SortStableFunc(outs, compareOutlines)
-	slices.SortStableFunc(holes, compareOutlines)
+	return loop{o, a < 0}, true
+}
+
+// regionsOf sorts loops into outer outlines and their holes.
+func regionsOf(loops []loop) []Region {
+	var outs, holes []loop
+	for _, l := range loops {
+		if l.hole {
+			holes = append(holes, l)
+		} else {
+			outs = append(outs, l)
+		}
+	}
+	slices.SortStableFunc(outs, compareLoops)
+	slices.SortStableFunc(holes, compareLoops)
 	rs := make([]Region, len(outs))
-	boxes := make([]Box, len(outs))
-	for i, o := range outs {
-		rs[i].Outer = o
-		boxes[i] = o.Bounds()
+	for i, l := range outs {
+		rs[i].Outer = l.o
+	}
+	if len(holes) == 0 {
+		return rs
+	}
+	boxes, areas := make([]Box, len(outs)), make([]float64, len(outs))
+	for i, l := range outs {
+		boxes[i], areas[i] = l.o.Bounds(), l.o.Area()
 	}
 	for _, h := range holes {
-		hb := h.Bounds()
+		hb := h.o.Bounds()
 		best, area := -1, math.Inf(1)
-		for i := range rs {
-			if !boxes[i].Grow(tolerance).ContainsBox(hb) || !holeIn(h, rs[i].Outer) {
-				continue
-			}
-			if a := rs[i].Outer.Area(); a < area {
-				best, area = i, a
+		for i, l := range outs {
+			if areas[i] < area && boxes[i].Grow(tolerance).ContainsBox(hb) && holeIn(h.o, l.o) {
+				best, area = i, areas[i]
 			}
 		}
 		if best >= 0 {
-			rs[best].Holes = append(rs[best].Holes, h)
+			rs[best].Holes = append(rs[best].Holes, h.o)
 		}
 	}
 	return rs
@@ -215,13 +231,8 @@ func holeIn(h, o Outline) bool {
 	return false
 }
 
-// compareOutlines orders by the first vertex, from the bottom up and then from the left, then by area.
-func compareOutlines(a, b Outline) int {
-	if c := cmp.Compare(a[0].Y, b[0].Y); c != 0 {
-		return c
-	}
-	if c := cmp.Compare(a[0].X, b[0].X); c != 0 {
-		return c
-	}
-	return cmp.Compare(a.Area(), b.Area())
+// compareLoops orders by the first vertex, from the bottom up and then from the left, then by the second.
+func compareLoops(a, b loop) int {
+	return cmp.Or(cmp.Compare(a.o[0].Y, b.o[0].Y), cmp.Compare(a.o[0].X, b.o[0].X),
+		cmp.Compare(a.o[1].Y, b.o[1].Y), cmp.Compare(a.o[1].X, b.o[1].X))
 }

@@ -21,7 +21,8 @@ const (
 	FaultNumber    FaultKind = iota // a coordinate or bulge that is no number or too large
 	FaultTooFew                     // nothing enclosed
 	FaultNoLength                   // a segment shorter than the tolerance
-	FaultCrossing                   // segments cross or run along each other
+	FaultCrossing                   // segments cross
+	FaultAlong                      // segments run along each other within the tolerance
 	FaultTouching                   // segments touch without crossing: a web or gap of no width
 	FaultDirection                  // runs the wrong way round
 	FaultPlace                      // a hole outside its outer outline or within another hole
@@ -240,7 +241,7 @@ func contacts(os []Outline) *Fault {
 			s0, s1 := c.param(pts[k-1]), c.param(pts[k])
 			m := c.at((s0 + s1) / 2)
 			if _, ok := d.on(m, tol); ok && s1-s0 > longestTouch {
-				report(&crossing, FaultCrossing, i, j, m, "run along each other")
+				report(&crossing, FaultAlong, i, j, m, "run along each other")
 				return
 			}
 		}

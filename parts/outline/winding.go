@@ -109,7 +109,7 @@ func (x *heightIndex) left(i int32) [2]int {
 			count(j)
 		}
 	}
-	if own := x.shapes[i].beside(p); own != 0 {
+	if own := beside(x.shapes[i].a, x.shapes[i].b, p); own != 0 {
 		w[0] += own * int(e.m[0])
 		w[1] += own * int(e.m[1])
 	}
@@ -143,18 +143,18 @@ func (x *heightIndex) wind(j int32, s *edgeShape, p Point) int {
 	return n
 }
 
-// beside is what an edge itself adds to the winding number immediately to the left of its middle p.
-// The chords count p on the side of the chord where it is; if that is the right side, the left side
+// beside is what an edge from a to b itself adds to the winding number immediately to the left of its
+// middle p. The chords count p on the side of the chord where it is; if that is the right side, the left side
 // has one more.
-func (s *edgeShape) beside(p Point) int {
+func beside(a, b, p Point) int {
 	switch {
-	case s.a.Y <= p.Y && p.Y < s.b.Y:
+	case a.Y <= p.Y && p.Y < b.Y:
 		return 1
-	case s.b.Y <= p.Y && p.Y < s.a.Y:
+	case b.Y <= p.Y && p.Y < a.Y:
 		return 0
 	}
-	above := p.Y >= max(s.a.Y, s.b.Y)
-	if above == (s.b.X > s.a.X) {
+	above := p.Y >= max(a.Y, b.Y)
+	if above == (b.X > a.X) {
 		return 0
 	}
 	return 1
