@@ -9,7 +9,7 @@ import (
 	"pinwright/parts/outline"
 )
 
-// What the parts ask of the catalogues of hardware and materials.
+// What the parts ask of the catalogue of hardware.
 
 // holeFor returns the hole that a pin asks for in a link or frame plate, about the origin: the seat of
 // a bearing where it sits, else the clearance hole of the bolt or the fit of the shaft. The bolt
@@ -63,9 +63,4 @@ func mountHole(m job.Mount) (float64, error) {
 	}
 	size, err := hardware.BoltHole(m.Bolt, m.Fit)
 	return size.Diameter, err
-}
-
-func (k *maker) rule(stock string) rule {
-	s := k.stock(stock)
-	return rule{name: millimetres(s.Thickness) + " mm " + s.Material, web: s.Thickness}
 }

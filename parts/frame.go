@@ -101,7 +101,7 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 			add(d)
 		}
 		for _, at := range x.corners() {
-			discs = append(discs, outline.Disc{Centre: at, Radius: 2 * r.web})
+			discs = append(discs, outline.Disc{Centre: at, Radius: 2 * r.wide})
 		}
 	}
 	if len(k.errs) > before {

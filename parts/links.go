@@ -24,7 +24,11 @@ func (k *maker) link(c job.Copy, i int) {
 	if c.Mirror {
 		drawn = -zero
 	}
+	before := len(k.errs)
 	seats := k.seats(l, pins, frame, axis, drawn)
+	if len(k.errs) > before {
+		return
+	}
 	outer, ok := k.body(l, seats)
 	if !ok {
 		return
@@ -99,7 +103,7 @@ func (k *maker) windows(l job.Link, seats []seat) *windows {
 	r := k.rule(l.Stock)
 	w := &windows{rim: l.Rim, corner: max(2, r.web/2)}
 	if w.rim == 0 {
-		w.rim = 2 * r.web
+		w.rim = 2 * r.wide
 	}
 	if w.rim < r.web {
 		k.fail("linkage.links."+l.Name+".rim", "make the rim at least "+upTo(r.web)+" mm",

@@ -4,25 +4,45 @@ import (
 	"math"
 
 	"pinwright/parts/job"
+	"pinwright/parts/material"
 )
 
-// rule is what a sheet's material and thickness ask for round holes.
+// rule is what a sheet's material asks for round its holes; thickness is as measured.
 type rule struct {
-	name string  // "3 mm cast acrylic", for messages
-	web  float64 // least material between two cuts, mm
+	material  material.Material
+	thickness float64
+	name      string  // "3 mm cast acrylic", for messages
+	web       float64 // least material between two cuts, mm; less is refused
+	wide      float64 // the same as it is wanted
 }
 
-// hole returns the radius of material that a pin's hole or a bearing seat wants about its centre, and
-// the one below which it is refused, mm.
-func (r rule) hole(h Hole) (wanted, least float64) {
-	d := h.Diameter
-	if h.Kind == BearingSeat {
-		return r.wall(d / 2)
+// rule is that of a stock.
+func (k *maker) rule(stock string) rule {
+	s := k.stock(stock)
+	m, err := material.Lookup(s.Material)
+	if err != nil {
+		k.fail("stock."+s.Name+".material", "", "stock %s: %v", s.Name, err)
 	}
-	return max(2*d, d/2+r.web), max(1.5*d, d/2+r.web)
+	web := m.Web(s.Thickness)
+	return rule{
+		material: m, thickness: s.Thickness, name: millimetres(s.Thickness) + " mm " + s.Material,
+		web: web.Refuse, wide: web.Want,
+	}
 }
 
-// bore is the same for a hole whose form the maker gives: the wall is taken from its outermost point.
+// hole returns the radius of material that a hole wants about its centre, and the one below which it
+// is refused, mm: by the material's edge rule for a hole that a pin bears against, by its rim for a
+// bearing seat.
+func (r rule) hole(h Hole) (wanted, least float64) {
+	if h.Kind == BearingSeat {
+		return r.wall(h.Diameter / 2)
+	}
+	d := r.material.EdgeDistance(r.thickness, h.Diameter)
+	return d.Want, d.Refuse
+}
+
+// bore is the same for a hole whose form the maker gives, from its outermost point: it carries its load
+// all round.
 func (r rule) bore(b job.Bore) (wanted, least float64) {
 	switch b.Kind {
 	case job.HexagonBore:
@@ -33,8 +53,7 @@ func (r rule) bore(b job.Bore) (wanted, least float64) {
 	return r.wall(b.Diameter / 2)
 }
 
-// wall is for holes that no pin bears against on one side: wanted are two webs or half the hole's
-// radius, refused is less than a web. Common practice, no source.
 func (r rule) wall(radius float64) (wanted, least float64) {
-	return radius + max(2*r.web, radius/2), radius + r.web
+	d := r.material.Rim(r.thickness, 2*radius)
+	return radius + d.Want, radius + d.Refuse
 }

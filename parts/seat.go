@@ -98,7 +98,7 @@ func (k *maker) radii(l job.Link, seats []seat) []float64 {
 		}
 	}
 	if math.IsInf(slim, 1) {
-		slim = 2 * r.web
+		slim = 2 * r.wide
 	}
 	out := make([]float64, len(seats))
 	for i, s := range seats {
