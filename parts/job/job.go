@@ -178,7 +178,6 @@ type Stock struct {
 	Kerf          float64 // full width, mm
 	ByShop        bool    // the shop compensates: paths are finished size
 	Grain         Grain
-	Flip          bool    // parts may be turned over
 	Price         float64 // a sheet, in the maker's money; 0: unknown
 }
 

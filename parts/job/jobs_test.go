@@ -146,7 +146,7 @@ func TestDefaults(t *testing.T) {
 	if got := j.Copies; len(got) != 1 || got[0] != (Copy{}) {
 		t.Errorf("copies: %+v", got)
 	}
-	if s := j.Stock[0]; s.Quantity != 1 || s.Grain != NoGrain || s.Flip || s.ByShop || s.Measured != 2.9 {
+	if s := j.Stock[0]; s.Quantity != 1 || s.Grain != NoGrain || s.ByShop || s.Measured != 2.9 {
 		t.Errorf("stock: %+v", s)
 	}
 	if s := mustRead(t, "watt-table.yaml").Stock[0]; s.Measured != s.Thickness || s.Web != s.Thickness {

@@ -51,7 +51,7 @@ func drawJob(t *rapid.T) Job {
 			Width:    mm(t, 500, 3000, "w"), Height: mm(t, 500, 3000, "h"), Quantity: rapid.IntRange(1, 99).Draw(t, "quantity"),
 			Margin: mm(t, 0, 50, "margin"), Web: mm(t, 0, 20, "web"), Kerf: mm(t, 0.05, 1, "kerf"),
 			ByShop: rapid.Bool().Draw(t, "shop"), Grain: rapid.SampledFrom([]Grain{NoGrain, HalfTurn, Quarter, Fixed}).Draw(t, "grain"),
-			Flip: rapid.Bool().Draw(t, "flip"), Price: mm(t, 0, 100, "price"),
+			Price: mm(t, 0, 100, "price"),
 		})
 		if j.Stock[i].Measured <= 0 {
 			j.Stock[i].Measured = thickness
@@ -318,8 +318,8 @@ func writeJob(j Job) string {
 		if s.ByShop {
 			by = "shop"
 		}
-		line("  %s: {material: %s, thickness: %s, measured: %s, sheet: [%s, %s], quantity: %d, margin: %s, web: %s, kerf: %s, compensated-by: %s, grain: %s, flip: %v, price: %s}",
-			s.Name, s.Material, mm(s.Thickness), mm(s.Measured), mm(s.Width), mm(s.Height), s.Quantity, mm(s.Margin), mm(s.Web), mm(s.Kerf), by, s.Grain, s.Flip, strings.TrimSuffix(mm(s.Price), "mm"))
+		line("  %s: {material: %s, thickness: %s, measured: %s, sheet: [%s, %s], quantity: %d, margin: %s, web: %s, kerf: %s, compensated-by: %s, grain: %s, price: %s}",
+			s.Name, s.Material, mm(s.Thickness), mm(s.Measured), mm(s.Width), mm(s.Height), s.Quantity, mm(s.Margin), mm(s.Web), mm(s.Kerf), by, s.Grain, strings.TrimSuffix(mm(s.Price), "mm"))
 	}
 	return b.String()
 }

@@ -51,7 +51,6 @@ func (r *reader) stocks(v *value) []Stock {
 			Kerf:      s.get("kerf").numberOr(0),
 			ByShop:    s.get("compensated-by").textOr("pinwright") == "shop",
 			Grain:     Grain(s.get("grain").textOr(string(NoGrain))),
-			Flip:      s.get("flip").isTrue(),
 			Price:     s.get("price").numberOr(0),
 		}
 		if m := s.get("measured"); m.ok() && s.get("thickness").ok() {
