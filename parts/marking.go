@@ -41,7 +41,7 @@ func (k *maker) mark() {
 			f, text, ok = fit(p.Region, n, texts)
 		}
 		if !ok {
-			k.fail(n.path, "widen the part", "%s: there is no room for a mark, not even for %s with letters of %s mm", p.Link, texts[1], millimetres(leastLetters))
+			k.fail(n.path, "widen the part", "%s: there is no room for a mark, not even for a number with digits of %s mm", p.Link, millimetres(leastLetters))
 			continue
 		}
 		p.Mark = Mark{Text: text, Strokes: append(append([]outline.Path{}, f.Strokes...), n.lines...)}

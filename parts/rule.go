@@ -57,3 +57,12 @@ func (r rule) wall(radius float64) (wanted, least float64) {
 	d := r.material.Rim(r.thickness, 2*radius)
 	return radius + d.Want, radius + d.Refuse
 }
+
+// between is the least material between a pin's hole and another one, mm; 0 for holes that no pin
+// bears against.
+func (r rule) between(h Hole) float64 {
+	if h.Kind != PinHole || h.Diameter == 0 {
+		return 0
+	}
+	return r.material.EdgeDistance(r.thickness, h.Diameter).Refuse - h.Diameter/2
+}

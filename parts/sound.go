@@ -5,7 +5,8 @@ import (
 )
 
 // sound checks a part against the least web between any two cuts, and tells what is too close: two
-// holes, a hole and the edge, the outer outline and itself.
+// holes, a hole and the edge, the outer outline and itself. A pin's hole also keeps the edge distance
+// of the material from other holes: it is as weak towards them as towards the edge.
 func (k *maker) sound(p Part, path string) bool {
 	r := k.rule(p.Stock)
 	ok := true
@@ -28,13 +29,14 @@ func (k *maker) sound(p Part, path string) bool {
 		for m := range i {
 			other, with := p.Region.Holes[m], p.Holes[m]
 			gap := outline.OutlineDistance(other, shape).Distance
+			want := max(r.web, r.between(h), r.between(with))
 			if gap == 0 || other.Locate(shape[0].Point) != outline.Outside || shape.Locate(other[0].Point) != outline.Outside {
 				k.fail(path, "move them apart, or make them smaller", "%s: %s at %s and %s at %s run into each other",
 					p.Link, with.called(), place(with.Centre), h.called(), place(h.Centre))
 				ok = false
-			} else if gap < r.web-1e-6 {
-				k.fail(path, "move them apart by "+upTo(r.web-gap)+" mm, or make them smaller", "%s: %s mm is left between %s at %s and %s at %s; %s wants %s mm",
-					p.Link, millimetres(gap), with.called(), place(with.Centre), h.called(), place(h.Centre), r.name, millimetres(r.web))
+			} else if gap < want-1e-6 {
+				k.fail(path, "move them apart by "+upTo(want-gap)+" mm, or make them smaller", "%s: %s mm is left between %s at %s and %s at %s; %s wants %s mm",
+					p.Link, millimetres(gap), with.called(), place(with.Centre), h.called(), place(h.Centre), r.name, millimetres(want))
 				ok = false
 			}
 		}
