@@ -183,7 +183,18 @@ func (c *curve) box() Box {
 	if c.k == 0 {
 		return b
 	}
-	// Where a quarter point of the circle lies on the arc, the tangent turns through an axis there.
+	if math.Abs(c.bulge) < 0.05 {
+		// A flat arc has one extreme in an axis at most, where its tangent turns through it; its centre is
+		// too far away to find it from there.
+		if c.t.Y*c.u.Y < 0 {
+			b.add(c.at(math.Atan2(-math.Copysign(c.t.Y, c.t.X*c.t.Y), math.Abs(c.t.X)) / c.k))
+		}
+		if c.t.X*c.u.X < 0 {
+			b.add(c.at(math.Atan2(math.Copysign(c.t.X, c.t.X*c.t.Y), math.Abs(c.t.Y)) / c.k))
+		}
+		return b
+	}
+	// A quarter point of the circle counts if it lies on the arc.
 	r := 1 / c.k
 	n := c.t.Left()
 	r2 := math.Abs(r)
