@@ -47,7 +47,7 @@ func BoltHole(size, class string) (HoleSize, error) {
 		return HoleSize{}, err
 	}
 	classes := metricClasses
-	if isInch(size) {
+	if IsInch(size) {
 		classes = inchClasses
 	}
 	for i, name := range classes {

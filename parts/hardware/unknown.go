@@ -29,14 +29,14 @@ func unknown(noun, word string, among []string) error {
 
 // missing is the error for a size that a table does not hold.
 func missing(noun, size string, among []string) error {
-	if isInch(size) {
+	if IsInch(size) {
 		return fmt.Errorf("%s %s: %w", noun, size, ErrInch)
 	}
 	return unknown(noun, size, among)
 }
 
-// isInch tells the inch sizes: "#8", "1/4".
-func isInch(size string) bool {
+// IsInch tells the inch sizes: "#8", "1/4".
+func IsInch(size string) bool {
 	return strings.HasPrefix(size, "#") || strings.Contains(size, "/")
 }
 

@@ -15,7 +15,7 @@ func Lookup(name string) (Material, error) {
 	words := split(name)
 	for _, f := range forbidden {
 		for _, alias := range f.names {
-			if holds(words, split(alias)) {
+			if same(name, alias) || len(alias) > 2 && holds(words, split(alias)) {
 				m := Material{Name: f.names[0], Asked: name, Verdict: Refused, Reason: f.reason + " (" + f.source + ")"}
 				return m, RefusedError{Asked: name, Name: m.Name, Reason: m.Reason}
 			}

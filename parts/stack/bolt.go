@@ -1,0 +1,61 @@
+package stack
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"pinwright/parts/hardware"
+)
+
+// choose gives the bolt for a budget: the shortest standard length of which even the shortest screw
+// reaches past the nut on the thickest stack. A hexagon bolt is taken with a shank when it has that
+// length and the nut stays off the shank on the thinnest stack: links turn better on a shank.
+func (f *fitting) choose(b Budget) (Through, error) {
+	t := Through{Diameter: f.diameter(), Need: b.Most}
+	if f.nut != nil {
+		pitches := PitchesPastNut
+		if f.nut.Kind == hardware.LockNut {
+			pitches = PitchesPastLocknut
+		}
+		t.Need += f.nut.Height + float64(pitches)*f.screw.Pitch
+	}
+	if f.as != f.size {
+		t.Designation = fmt.Sprintf("%s head screw %s", f.screw.Head, f.size)
+		return t, nil
+	}
+	if f.open {
+		t.Designation = f.screw.Designation(0)
+		return t, nil
+	}
+	if shanked, err := f.screw.Shanked(); err == nil {
+		if l, err := shanked.SureLength(t.Need); err == nil && shanked.Grip(l) <= b.Least+slack {
+			f.screw = shanked
+		}
+	}
+	length, err := f.screw.SureLength(t.Need)
+	if err != nil {
+		return t, f.tooLong(err)
+	}
+	if grip := f.screw.Grip(length); f.nut != nil && grip > b.Least+slack {
+		return t, fmt.Errorf(
+			"joint %s: the thread of %s begins up to %.1f mm under the head, and the thinnest stack is %.1f mm: the nut would stop on the shank; say head: hexagon, which is threaded to the head",
+			f.pin.Joint, f.screw.Designation(length), grip, b.Least)
+	}
+	t.Designation = f.screw.Designation(length)
+	t.Length, t.Excess = length, length-t.Need
+	return t, nil
+}
+
+// tooLong says which planes ask for more than there is.
+func (f *fitting) tooLong(err error) error {
+	var short hardware.TooShortError
+	if !errors.As(err, &short) {
+		return fmt.Errorf("joint %s: %w", f.pin.Joint, err)
+	}
+	first, last := f.members[0], f.members[len(f.members)-1]
+	return fmt.Errorf(
+		"joint %s: from %s (plane %d) to %s (plane %d) the bolt needs %.1f mm, and the longest %s %s is %g mm: bring the planes nearer by %g mm, or take a thicker bolt, which comes longer",
+		f.pin.Joint, first.name, first.plane, last.name, last.plane, short.Need,
+		short.Screw.Standard, short.Screw.Size, short.Screw.Most, math.Ceil(short.Short*10)/10)
+}

@@ -1,0 +1,224 @@
+package stack
+
+import (
+	"errors"
+	"fmt"
+	"slices"
+	"strings"
+
+	"pinwright/parts/hardware"
+	"pinwright/parts/job"
+)
+
+// fitting is a pin with its members and with what the catalogue holds for it.
+type fitting struct {
+	pin     job.Pin
+	members []member
+	open    bool
+	movable bool // the pivot is adjustable
+	size    string
+	as      string // metric size that stands in for an inch size in the catalogue; else size
+	screw   hardware.Screw
+	nut     *hardware.Nut
+	washer  *hardware.Washer
+	spacer  float64 // outside diameter of spacers
+	notes   []string
+}
+
+// fitOut looks up everything that a pin needs.
+func fitOut(j job.Job, pin job.Pin) (fitting, error) {
+	f := fitting{pin: pin}
+	var err error
+	if f.members, err = members(j, pin); err != nil {
+		return f, err
+	}
+	if len(f.members) == 0 {
+		return f, fmt.Errorf("joint %s: it has a pin, and no link or plate is on it", pin.Joint)
+	}
+	for _, joint := range j.Linkage.Joints {
+		if joint.Name == pin.Joint && joint.Ground != nil {
+			f.movable = joint.Ground.Range != nil
+			f.open = !slices.ContainsFunc(f.members, func(m member) bool { return m.plate })
+		}
+	}
+	key := "pins." + pin.Joint
+	fail := func(err error) (fitting, error) {
+		return f, fault(j, key, fmt.Sprintf("joint %s: %v", pin.Joint, err), "")
+	}
+	if pin.Kind == job.ShaftPin {
+		if err := f.shaft(); err != nil {
+			return fail(err)
+		}
+		return f, nil
+	}
+	if err := f.bolt(); err != nil {
+		return fail(err)
+	}
+	if pin.Kind == job.BearingPin {
+		if err := f.bearing(); err != nil {
+			return fail(err)
+		}
+	}
+	return f, nil
+}
+
+// bolt looks up screw, nut and washer.
+func (f *fitting) bolt() error {
+	f.size, f.as = f.pin.Bolt, f.pin.Bolt
+	if hardware.IsInch(f.size) {
+		as, err := standIn(f.size)
+		if err != nil {
+			return err
+		}
+		f.as = as
+		f.notes = append(f.notes, fmt.Sprintf("Washer, nut and head of %s are taken as those of %s, which are no smaller: measure yours.", f.size, as))
+	}
+	var err error
+	if f.screw, err = hardware.ScrewFor(hardware.Head(f.pin.Head), f.as); err != nil {
+		return err
+	}
+	if f.pin.Nut != "none" {
+		n, err := hardware.NutFor(hardware.NutKind(f.pin.Nut), f.as)
+		if err != nil {
+			return err
+		}
+		f.nut = &n
+		if n.Source.Confirmed == "from memory" {
+			f.notes = append(f.notes, fmt.Sprintf("The height of the nut %s (%g mm) is from memory and makers differ: measure it.", n.Size, n.Height))
+		}
+	}
+	return f.washers(func(k hardware.WasherKind) (hardware.Washer, error) { return hardware.WasherFor(k, f.as) })
+}
+
+// washers looks up the washer and what it says about spacers: tube as wide as a small washer.
+func (f *fitting) washers(of func(hardware.WasherKind) (hardware.Washer, error)) error {
+	f.spacer = 2 * f.diameter()
+	if small, err := of(hardware.SmallWasher); err == nil {
+		f.spacer = small.Outside
+	}
+	if f.pin.Washer == "none" {
+		return nil
+	}
+	w, err := of(hardware.WasherKind(f.pin.Washer))
+	if err != nil {
+		return err
+	}
+	f.washer = &w
+	return nil
+}
+
+// diameter is that of bolt or shaft.
+func (f *fitting) diameter() float64 {
+	if f.pin.Kind == job.ShaftPin {
+		return f.pin.Shaft
+	}
+	d, _ := hardware.BoltDiameter(f.pin.Bolt) // looked up before
+	return d
+}
+
+// standIn gives the smallest metric bolt of the catalogue that is no thinner than an inch bolt.
+func standIn(inch string) (string, error) {
+	d, err := hardware.BoltDiameter(inch)
+	if err != nil {
+		return "", err
+	}
+	best, least := "", 0.0
+	for _, size := range hardware.BoltSizes() {
+		m, err := hardware.BoltDiameter(size)
+		if err != nil || m < d || !strings.HasPrefix(size, "M") {
+			continue
+		}
+		if _, err := hardware.ScrewFor(hardware.Socket, size); err == nil && (best == "" || m < least) {
+			best, least = size, m
+		}
+	}
+	if best == "" {
+		return "", fmt.Errorf("bolt %s: %w", inch, hardware.ErrInch)
+	}
+	return best, nil
+}
+
+// shaft looks up the washer and finds out which members are fast on the shaft.
+func (f *fitting) shaft() error {
+	if !(f.pin.Shaft > 0) {
+		return fmt.Errorf("a shaft of %g mm", f.pin.Shaft)
+	}
+	tight := slices.Contains([]string{"push", "press", "K7", "M7", "N7", "P7"}, f.pin.Fit)
+	if f.pin.Clearance != nil {
+		tight = *f.pin.Clearance <= 0
+	}
+	if tight {
+		for i := range f.members {
+			f.members[i].held = true
+		}
+	}
+	err := f.washers(func(k hardware.WasherKind) (hardware.Washer, error) {
+		return hardware.ShaftWasher(k, f.pin.Shaft)
+	})
+	if err != nil {
+		return fmt.Errorf("%w; say washer: none", err)
+	}
+	return nil
+}
+
+// bearing puts the bearing into its seats, and takes a washer that stays off its outer ring.
+func (f *fitting) bearing() error {
+	b, err := hardware.BearingFor(f.pin.Bearing)
+	if err != nil {
+		return err
+	}
+	if d := f.diameter(); d > b.Bore {
+		return fmt.Errorf("bolt %s of %g mm does not go through the bore of bearing %s, %g mm", f.size, d, b.Designation, b.Bore)
+	}
+	if len(f.pin.Seats) == 0 {
+		return errors.New("no part is named that the bearing sits in")
+	}
+	for _, seat := range f.pin.Seats {
+		i := slices.IndexFunc(f.members, func(m member) bool { return m.name == seat })
+		if i < 0 {
+			return fmt.Errorf("the bearing is to sit in %s, which is not on this joint", seat)
+		}
+		f.members[i].seat = &b
+	}
+	// What is not on a bearing is clamped by the bolt: two links there could not turn on each other.
+	clamped := ""
+	for _, m := range f.members {
+		if m.seat != nil {
+			continue
+		}
+		body := m.name
+		if m.plate {
+			body = "the frame"
+		}
+		if clamped != "" && clamped != body {
+			return fmt.Errorf("the bolt clamps %s and %s together, and they could not turn on each other: give one of them a bearing too (in: [%s, %s])",
+				clamped, body, strings.Join(f.pin.Seats, ", "), m.name)
+		}
+		clamped = body
+	}
+	if b.Other != 0 && b.Other != b.Width && !b.Shielded {
+		f.notes = append(f.notes, fmt.Sprintf("Bearing %s is the open form, %g mm wide; the shielded %sZZ is %g mm wide: buy what the list says.", b.Designation, b.Width, b.Designation, b.Other))
+	}
+	if f.washer == nil {
+		return nil
+	}
+	limit := b.InnerRing()
+	if f.washer.Outside > limit && f.washer.Kind != hardware.SmallWasher {
+		if small, err := hardware.WasherFor(hardware.SmallWasher, f.as); err == nil {
+			f.washer = &small
+		}
+	}
+	if f.washer.Outside > limit {
+		f.notes = append(f.notes, fmt.Sprintf("Washer %s is %g mm wide and may rub on the outer ring of bearing %s, which begins at about %.1f mm: turn it down, or use shim rings as thick.", f.washer.Designation(), f.washer.Outside, b.Designation, limit))
+	}
+	f.spacer = min(f.spacer, limit)
+	return nil
+}
+
+// washerThickness is 0 without washers.
+func (f *fitting) washerThickness() float64 {
+	if f.washer == nil {
+		return 0
+	}
+	return f.washer.Thickness
+}

@@ -1,0 +1,181 @@
+package stack
+
+import (
+	"errors"
+	"slices"
+
+	"pinwright/parts/job"
+)
+
+// plan is the side view being built, from bottom to top.
+type plan struct {
+	job      job.Job
+	fittings []fitting
+	slabs    map[int]float64 // plane to thickness
+	planes   []int           // with parts, ascending
+	from     map[int]float64 // height of the lower face
+	levels   []Level
+	kits     []Kit // one for every fitting, in their order; of one copy
+}
+
+// newPlan does steps 1 to 4 of the package's plan.
+func newPlan(j job.Job) (*plan, error) {
+	p := &plan{job: j, slabs: map[int]float64{}, from: map[int]float64{}}
+	var errs []error
+	for _, pin := range j.Pins {
+		f, err := fitOut(j, pin)
+		if err != nil {
+			errs = append(errs, err)
+			continue
+		}
+		p.fittings = append(p.fittings, f)
+	}
+	if len(errs) > 0 {
+		return nil, errors.Join(errs...)
+	}
+	p.lay()
+	p.kits = make([]Kit, len(p.fittings))
+	for i, plane := range p.planes {
+		if i > 0 {
+			p.gap(p.planes[i-1], plane)
+		}
+		p.levels = append(p.levels, Level{Plane: plane, From: p.from[plane], To: p.from[plane] + p.slabs[plane]})
+		for k := range p.fittings {
+			f := &p.fittings[k]
+			if f.members[len(f.members)-1].plane != plane {
+				continue
+			}
+			kit, err := p.kit(f)
+			if err != nil {
+				errs = append(errs, err)
+			}
+			p.kits[k] = kit
+		}
+	}
+	return p, errors.Join(errs...)
+}
+
+// lay finds the planes with parts on them and how thick they are.
+func (p *plan) lay() {
+	put := func(plane int, stock string) {
+		if s, ok := stockNamed(p.job, stock); ok {
+			if _, known := p.slabs[plane]; !known {
+				p.planes = append(p.planes, plane)
+			}
+			p.slabs[plane] = max(p.slabs[plane], s.Measured)
+		}
+	}
+	for _, l := range p.job.Links {
+		put(l.Plane, l.Stock)
+	}
+	if p.job.Frame != nil {
+		for _, plate := range p.job.Frame.Plates {
+			put(plate.Plane, p.job.Frame.Stock)
+		}
+	}
+	slices.Sort(p.planes)
+}
+
+// levelTop is the height reached so far.
+func (p *plan) levelTop() float64 {
+	if len(p.levels) == 0 {
+		return 0
+	}
+	return p.levels[len(p.levels)-1].To
+}
+
+// gap finds where the next plane with parts begins, and lays the empty planes between.
+func (p *plan) gap(lower, upper int) {
+	empty := upper - lower - 1
+	washer := p.widestWasher(lower, upper)
+	least := washer
+	if empty > 0 {
+		t := max(p.slabs[lower], p.slabs[upper])
+		least = max(float64(empty)*t+float64(empty+1)*washer, p.roomAbove(lower), p.roomBelow(upper))
+	}
+	gap := smallestGap(least, p.crossings(lower, upper))
+	top := p.levelTop()
+	if empty > 0 {
+		each := (gap - float64(empty+1)*washer) / float64(empty)
+		for i := range empty {
+			from := top + washer + float64(i)*(each+washer)
+			p.levels = append(p.levels, Level{Plane: lower + 1 + i, From: from, To: from + each, Empty: true})
+		}
+	}
+	p.from[upper] = top + gap
+}
+
+// widestWasher is the thickest washer of the pins with parts on both planes; of all pins when there is
+// no such pin, and at least RunningGap then.
+func (p *plan) widestWasher(lower, upper int) float64 {
+	across := 0.0
+	found := false
+	for i := range p.fittings {
+		f := &p.fittings[i]
+		if _, _, ok := f.neighbours(lower, upper); ok {
+			across, found = max(across, f.washerThickness()), true
+		}
+	}
+	if found {
+		return across
+	}
+	widest := RunningGap
+	for i := range p.fittings {
+		widest = max(widest, p.fittings[i].washerThickness())
+	}
+	return widest
+}
+
+// neighbours gives the members of a pin on two planes when nothing of it lies between them.
+func (f *fitting) neighbours(lower, upper int) (a, b member, ok bool) {
+	for i := 1; i < len(f.members); i++ {
+		if f.members[i-1].plane == lower && f.members[i].plane == upper {
+			return f.members[i-1], f.members[i], true
+		}
+	}
+	return member{}, member{}, false
+}
+
+func (p *plan) crossings(lower, upper int) []crossing {
+	var out []crossing
+	for i := range p.fittings {
+		f := &p.fittings[i]
+		if a, b, ok := f.neighbours(lower, upper); ok {
+			out = append(out, crossing{f.washerThickness(), p.slabs[lower] - a.top() + b.bottom()})
+		}
+	}
+	return out
+}
+
+// roomAbove is what the pins that end on a plane need above it, RunningGap included. Their kits are
+// stacked already.
+func (p *plan) roomAbove(plane int) float64 {
+	room := 0.0
+	for i, f := range p.fittings {
+		if f.members[len(f.members)-1].plane == plane {
+			room = max(room, p.kits[i].upperEnd()-p.from[plane]-p.slabs[plane]+RunningGap)
+		}
+	}
+	return room
+}
+
+// roomBelow is what the pins that begin on a plane need below it, RunningGap included.
+func (p *plan) roomBelow(plane int) float64 {
+	room := 0.0
+	for i := range p.fittings {
+		f := &p.fittings[i]
+		if f.members[0].plane == plane {
+			room = max(room, f.below()-f.members[0].bottom()+RunningGap)
+		}
+	}
+	return room
+}
+
+// upperEnd is the height of the highest thing of a kit.
+func (k Kit) upperEnd() float64 {
+	top := k.Through.To
+	for _, e := range k.Elements {
+		top = max(top, e.To)
+	}
+	return top
+}
