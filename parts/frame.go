@@ -37,7 +37,7 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 		p.Region.Holes = append(p.Region.Holes, d.shape)
 		p.Holes = append(p.Holes, d.hole)
 	}
-	before := len(k.errs)
+	before := k.faults
 	for _, joint := range plate.Pivots {
 		g, pin := k.ground(joint), k.pin(joint)
 		if g == nil || pin == nil {
@@ -61,7 +61,7 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 			discs = append(discs, outline.Disc{Centre: at, Radius: wanted + way.sagitta})
 			n.covers = append(n.covers, outline.Disc{Centre: at, Radius: coverOf(*pin, d.hole)})
 		}
-		if g.Range == nil || d.hole.Kind == BearingSeat && g.Range.Length() == 0 {
+		if g.Range == nil {
 			at := outline.Place(0, false, g.At)
 			d.hole.Centre, d.shape = g.At, d.shape.Transform(at)
 			add(d)
@@ -104,7 +104,7 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 			discs = append(discs, outline.Disc{Centre: at, Radius: 2 * r.wide})
 		}
 	}
-	if len(k.errs) > before {
+	if k.faults > before {
 		return
 	}
 	if len(discs) == 0 {

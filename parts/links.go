@@ -24,13 +24,13 @@ func (k *maker) link(c job.Copy, i int) {
 	if c.Mirror {
 		drawn = -zero
 	}
-	before := len(k.errs)
+	before := k.faults
 	seats := k.seats(l, pins, frame, axis, drawn)
-	if len(k.errs) > before {
+	if k.faults > before {
 		return
 	}
 	outer, ok := k.body(l, seats)
-	if !ok {
+	if !ok || k.faults > before {
 		return
 	}
 	var drills []drilling

@@ -54,6 +54,7 @@ type maker struct {
 	parts   []Part
 	notes   []note // beside parts, in the same order
 	errs    job.Errors
+	faults  int // told so far, repetitions counted
 }
 
 // note is what the making of a part leaves for its mark.
@@ -67,6 +68,7 @@ type note struct {
 
 // fail adds an error at a key path of the job, once.
 func (k *maker) fail(path, hint, format string, args ...any) {
+	k.faults++
 	e := k.job.Fault(path, fmt.Sprintf(format, args...), hint)
 	for _, old := range k.errs {
 		if old.Position == e.Position && old.Message == e.Message {
