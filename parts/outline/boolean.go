@@ -3,6 +3,9 @@ package outline
 // Union returns everything that lies in at least one of the regions, as regions that do not overlap,
 // sorted from the bottom up. Outlines that run the wrong way are turned; regions that touch along a
 // line become one, regions that touch in a point stay two. Empty if nothing is left.
+//
+// Input may be anything: outlines that cross themselves count where they run round a point counter-clockwise
+// more often than clockwise (a hole takes one away), all regions together.
 func Union(rs ...Region) []Region {
 	return combine(rs, nil, func(w [2]int) bool { return w[0] >= 1 })
 }
