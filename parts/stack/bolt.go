@@ -20,6 +20,7 @@ func (f *fitting) choose(b Budget) (Through, error) {
 		}
 		t.Need += f.nut.Height + float64(pitches)*f.screw.Pitch
 	}
+	t.Need = tidy(t.Need)
 	if f.as != f.size {
 		t.Designation = fmt.Sprintf("%s head screw %s", f.screw.Head, f.size)
 		return t, nil
@@ -43,7 +44,7 @@ func (f *fitting) choose(b Budget) (Through, error) {
 			f.pin.Joint, f.screw.Designation(length), grip, b.Least)
 	}
 	t.Designation = f.screw.Designation(length)
-	t.Length, t.Excess = length, length-t.Need
+	t.Length, t.Excess = length, tidy(length-t.Need)
 	return t, nil
 }
 

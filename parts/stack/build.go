@@ -75,5 +75,5 @@ func Between(j job.Job, lower, upper string) (float64, error) {
 	if a == b {
 		return 0, fmt.Errorf("plates %s and %s lie on one plane", lower, upper)
 	}
-	return p.from[b] - p.from[a] - s.Measured, nil
+	return tidy(p.from[b] - p.from[a] - s.Measured), nil
 }

@@ -36,7 +36,7 @@ func fill(distance, washer float64) (filling, bool) {
 			}
 		}
 		rest := max(0, distance-float64(n)*washer)
-		return filling{washers: n, play: rest}, rest <= MostPlay+slack
+		return filling{washers: n, play: tidy(rest)}, rest <= MostPlay+slack
 	}
 	if f, ok := stacked(3); ok {
 		return f, true

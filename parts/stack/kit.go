@@ -30,7 +30,7 @@ type pile struct {
 }
 
 func (p *pile) put(e Element) {
-	e.From, e.To = p.z, p.z+e.Thickness
+	e.From, e.To = tidy(p.z), tidy(p.z+e.Thickness)
 	p.kit.Elements = append(p.kit.Elements, e)
 	p.z = e.To
 }
@@ -52,6 +52,15 @@ func (b *Budget) add(least, nominal, most float64) {
 	b.Nominal += nominal
 	b.Most += most
 }
+
+// close ends the budget: the play counts in the greatest stack alone.
+func (k *Kit) close() {
+	k.Play = tidy(k.Play)
+	k.Budget = Budget{tidy(k.Budget.Least), tidy(k.Budget.Nominal), tidy(k.Budget.Most + k.Play)}
+}
+
+// tidy takes away what sums of decimal figures gather in binary, 1e-9 mm.
+func tidy(v float64) float64 { return math.Round(v*1e9) / 1e9 }
 
 // kit stacks the kit of a pin whose members all have their heights.
 func (p *plan) kit(f *fitting) (Kit, error) {
@@ -129,7 +138,7 @@ func (p *plan) boltKit(f *fitting, pl *pile) error {
 			pl.z += EndPlay
 		}
 	}
-	pl.kit.Budget.Most += pl.kit.Play
+	pl.kit.close()
 	nutFace := pl.z
 	if f.nut != nil {
 		what := f.nut.Designation()
@@ -142,9 +151,9 @@ func (p *plan) boltKit(f *fitting, pl *pile) error {
 	if err != nil {
 		return fault(p.job, "pins."+f.pin.Joint, err.Error(), "")
 	}
-	through.From, through.To = face, face+max(through.Length, math.Ceil(through.Need*10-slack)/10)
+	through.From, through.To = tidy(face), tidy(face+max(through.Length, math.Ceil(through.Need*10-slack)/10))
 	if f.nut != nil {
-		through.Past = through.To - nutFace - f.nut.Height
+		through.Past = tidy(through.To - nutFace - f.nut.Height)
 	}
 	pl.kit.Through = through
 	return nil
@@ -186,16 +195,16 @@ func (p *plan) shaftKit(f *fitting, pl *pile) error {
 	if !first.held {
 		pl.kit.Play += EndPlay
 	}
-	pl.kit.Budget.Most += pl.kit.Play
-	length := math.Ceil((pl.z-from)*10-slack) / 10
+	pl.kit.close()
+	length := math.Floor((pl.z-from)*10+slack) / 10
 	pl.kit.Through = Through{
 		Designation: fmt.Sprintf("shaft %g mm", f.pin.Shaft),
 		Diameter:    f.pin.Shaft,
 		Length:      length,
-		Need:        pl.z - from,
-		Excess:      length - (pl.z - from),
+		Need:        tidy(pl.z - from),
+		Excess:      tidy(length - (pl.z - from)),
 		From:        from,
-		To:          from + length,
+		To:          tidy(from + length),
 	}
 	if f.open {
 		pl.kit.Through.Length, pl.kit.Through.Excess = 0, 0
@@ -224,6 +233,9 @@ func (p *plan) remarks(f *fitting, k *Kit) {
 	}
 	if f.movable {
 		note("Adjustable pivot: when it is set, clamp it so that it does not creep in its slot.")
+	}
+	if f.pin.Kind == job.BearingPin && k.Play > slack {
+		note("The bolt closes %.2f mm of gaps when it clamps the inner rings.", k.Play)
 	}
 	if f.washer == nil && len(f.members) > 1 {
 		note("No washers: the parts rub on each other.")

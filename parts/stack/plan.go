@@ -39,7 +39,7 @@ func newPlan(j job.Job) (*plan, error) {
 		if i > 0 {
 			p.gap(p.planes[i-1], plane)
 		}
-		p.levels = append(p.levels, Level{Plane: plane, From: p.from[plane], To: p.from[plane] + p.slabs[plane]})
+		p.levels = append(p.levels, Level{Plane: plane, From: p.from[plane], To: tidy(p.from[plane] + p.slabs[plane])})
 		for k := range p.fittings {
 			f := &p.fittings[k]
 			if f.members[len(f.members)-1].plane != plane {
@@ -99,10 +99,10 @@ func (p *plan) gap(lower, upper int) {
 		each := (gap - float64(empty+1)*washer) / float64(empty)
 		for i := range empty {
 			from := top + washer + float64(i)*(each+washer)
-			p.levels = append(p.levels, Level{Plane: lower + 1 + i, From: from, To: from + each, Empty: true})
+			p.levels = append(p.levels, Level{Plane: lower + 1 + i, From: tidy(from), To: tidy(from + each), Empty: true})
 		}
 	}
-	p.from[upper] = top + gap
+	p.from[upper] = tidy(top + gap)
 }
 
 // widestWasher is the thickest washer of the pins with parts on both planes; of all pins when there is
