@@ -78,10 +78,26 @@ func BenchmarkDifferenceHoleFromPlate(b *testing.B) {
 func BenchmarkDistanceBetweenParts(b *testing.B) {
 	part := Region{Outer: gear(100), Holes: []Outline{CircleHole(Point{}, 4)}}
 	other := part.Transform(Place(0.3, false, Point{60, 7}))
-	b.ReportAllocs()
-	for b.Loop() {
-		Between(part, other)
-	}
+	p, q := EdgesOf(part), EdgesOf(other)
+	b.Run("Plain", func(b *testing.B) {
+		b.ReportAllocs()
+		for b.Loop() {
+			Between(part, other)
+		}
+	})
+	b.Run("Prepared", func(b *testing.B) {
+		b.ReportAllocs()
+		for b.Loop() {
+			p.Between(q)
+		}
+	})
+	b.Run("Far", func(b *testing.B) {
+		far := EdgesOf(part.Transform(Place(0, false, Point{500, 0})))
+		b.ReportAllocs()
+		for b.Loop() {
+			p.Closer(far, 2)
+		}
+	})
 }
 
 func BenchmarkFlatten1000Segments(b *testing.B) {

@@ -197,18 +197,5 @@ func OutlineDistance(a, b Outline) Nearest {
 // Between returns the shortest way between two regions, their holes taken into account: 0 if they
 // touch or overlap, also if one lies within the material of the other. Infinite if one is empty.
 func Between(a, b Region) Nearest {
-	s, t := newShape(a.Outlines()...), newShape(b.Outlines()...)
-	best := Nearest{Distance: math.Inf(1)}
-	s.distance(&t, &best)
-	if best.Distance == 0 || math.IsInf(best.Distance, 1) || !s.box.Intersects(t.box) {
-		return best
-	}
-	// The curves are apart: either the regions are, or one lies wholly in the other's material.
-	if p := a.Outer[0].Point; b.Locate(p) != Outside {
-		return Nearest{A: p, B: p}
-	}
-	if p := b.Outer[0].Point; a.Locate(p) != Outside {
-		return Nearest{A: p, B: p}
-	}
-	return best
+	return EdgesOf(a).Between(EdgesOf(b))
 }

@@ -1,7 +1,5 @@
 package outline
 
-import "math"
-
 // Overlap says whether the regions overlap deeper than tol (mm): whether a disc of that diameter fits into what
 // both cover. Touching is no overlap; with a tol that is not positive the tolerance of the package counts.
 func Overlap(a, b Region, tol float64) bool {
@@ -10,13 +8,8 @@ func Overlap(a, b Region, tol float64) bool {
 	if !ab.Grow(-tol / 2).Intersects(bb.Grow(-tol / 2)) {
 		return false
 	}
-	s, t := newShape(a.Outlines()...), newShape(b.Outlines()...)
-	if s.box.Empty() || t.box.Empty() {
-		return false
-	}
-	best := Nearest{Distance: math.Inf(1)}
-	s.distance(&t, &best)
-	if best.Distance > tolerance && a.Locate(b.Outer[0].Point) == Outside && b.Locate(a.Outer[0].Point) == Outside {
+	// Overlapping curves are at no distance; so the curves are apart if the regions are.
+	if Between(a, b).Distance > tolerance {
 		return false
 	}
 	common := Intersection([]Region{a}, []Region{b})

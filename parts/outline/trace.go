@@ -6,7 +6,7 @@ import (
 	"slices"
 )
 
-// Tracing: directed boundary edges, the inside on their left, become outlines and these regions.
+// Tracing: directed boundary edges, the inside on their left, become outlines and outlines become regions.
 //
 // Plan:
 //
