@@ -306,7 +306,7 @@ func TestFlattenSides(t *testing.T) {
 		CircleHole(Point{1, 2}, 10),
 		Capsule(Point{0, 0}, Point{20, 7}, 4),
 		ArcSlot(Point{0, 0}, 20, 0.2, 3, 3),
-		Outline{{Point{0, 0}, 0.3}, {Point{20, 0}, -0.3}, {Point{20, 20}, 0}, {Point{0, 20}, -0.2}},
+		{{Point{0, 0}, 0.3}, {Point{20, 0}, -0.3}, {Point{20, 20}, 0}, {Point{0, 20}, -0.2}},
 	}
 	r := rand.New(rand.NewPCG(8, 9))
 	for range 20 {

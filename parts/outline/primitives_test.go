@@ -62,9 +62,17 @@ func TestLocateRectangleWithHole(t *testing.T) {
 		p    Point
 		want Location
 	}{
-		{Point{1, 1}, Inside}, {Point{10, 5}, Outside}, {Point{13, 5}, OnEdge}, {Point{10, 8}, OnEdge},
-		{Point{0, 5}, OnEdge}, {Point{20, 10}, OnEdge}, {Point{21, 5}, Outside}, {Point{-1, 0}, Outside},
-		{Point{-1, 10}, Outside}, {Point{10, 8.001}, Inside}, {Point{10, 7.999}, Outside},
+		{Point{1, 1}, Inside},
+		{Point{10, 5}, Outside},
+		{Point{13, 5}, OnEdge},
+		{Point{10, 8}, OnEdge},
+		{Point{0, 5}, OnEdge},
+		{Point{20, 10}, OnEdge},
+		{Point{21, 5}, Outside},
+		{Point{-1, 0}, Outside},
+		{Point{-1, 10}, Outside},
+		{Point{10, 8.001}, Inside},
+		{Point{10, 7.999}, Outside},
 	} {
 		if got := r.Locate(c.p); got != c.want {
 			t.Errorf("Locate(%v) = %v, want %v", c.p, got, c.want)
