@@ -7,7 +7,7 @@ const (
 	noDiode   = "A 450 nm diode laser does not cut clear or blue acrylic (university and workshop laser safety pages, 1 place)."
 	noHobby   = "A hobby CO2 laser does not cut metal (university and workshop laser safety pages, 2+ places)."
 	shopKerf  = "Metal shops usually compensate the kerf themselves: ask, and say compensated-by: shop, or parts are compensated twice."
-	taper     = "Check the real thickness and say measured: bolts, spacers and slots follow it."
+	measure   = "Check the real thickness and say measured: bolts, spacers and slots follow it."
 	toWasher  = "put a washer between parts that rub"
 	pages     = "university and workshop laser safety pages"
 	pagesMany = pages + ", 2+ places"
@@ -31,7 +31,7 @@ var sheets = []Material{
 		Friction:  acrylicFriction,
 		Lasers:    []Laser{CO2},
 		Verdict:   OK,
-		Cautions:  []string{watch, fumes, noDiode, taper},
+		Cautions:  []string{watch, fumes, noDiode, measure},
 		tolerance: castAcrylic,
 		web:       co2Web,
 		kerfs:     acrylicKerfs,
@@ -59,7 +59,7 @@ var sheets = []Material{
 		Friction:  woodFriction,
 		Lasers:    []Laser{CO2, Diode},
 		Verdict:   OK,
-		Cautions:  []string{watch, fumes, taper, "Glue lines and knots may not cut through; some workshops don't allow plywood (" + pages + ", disputed)."},
+		Cautions:  []string{watch, fumes, measure, "Glue lines and knots may not cut through; some workshops don't allow plywood (" + pages + ", disputed)."},
 		tolerance: plywood,
 		web:       co2Web,
 		kerfs:     plywoodKerfs,
