@@ -55,8 +55,27 @@ func (f *fitting) tooLong(err error) error {
 		return fmt.Errorf("joint %s: %w", f.pin.Joint, err)
 	}
 	first, last := f.members[0], f.members[len(f.members)-1]
+	advice := fmt.Sprintf("bring the planes nearer by %g mm", math.Ceil(short.Short*10)/10)
+	if thicker, ok := longer(short); ok {
+		advice += fmt.Sprintf(", or take %s, which comes up to %g mm", thicker.Size, thicker.Most)
+	}
 	return fmt.Errorf(
-		"joint %s: from %s (plane %d) to %s (plane %d) the bolt needs %.1f mm, and the longest %s %s is %g mm: bring the planes nearer by %g mm, or take a thicker bolt, which comes longer",
+		"joint %s: from %s (plane %d) to %s (plane %d) the bolt needs %.1f mm, and the longest %s %s is %g mm: %s",
 		f.pin.Joint, first.name, first.plane, last.name, last.plane, short.Need,
-		short.Screw.Standard, short.Screw.Size, short.Screw.Most, math.Ceil(short.Short*10)/10)
+		short.Screw.Standard, short.Screw.Size, short.Screw.Most, advice)
+}
+
+// longer is the next thicker screw of the same head that comes long enough, its thicker nut and washers
+// counted roughly: once their difference in diameter, twice that in pitch.
+func longer(short hardware.TooShortError) (hardware.Screw, bool) {
+	for _, size := range hardware.BoltSizes() {
+		s, err := hardware.ScrewFor(short.Screw.Head, size)
+		if err != nil || s.Diameter <= short.Screw.Diameter {
+			continue
+		}
+		if s.Most >= short.Need+(s.Diameter-short.Screw.Diameter)+2*(s.Pitch-short.Screw.Pitch) {
+			return s, true
+		}
+	}
+	return hardware.Screw{}, false
 }

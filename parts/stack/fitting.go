@@ -41,7 +41,7 @@ func fitOut(j job.Job, pin job.Pin) (fitting, error) {
 			f.open = !slices.ContainsFunc(f.members, func(m member) bool { return m.plate })
 		}
 	}
-	key := "pins." + pin.Joint
+	key := pinKey(j, pin.Joint)
 	fail := func(err error) (fitting, error) {
 		return f, fault(j, key, fmt.Sprintf("joint %s: %v", pin.Joint, err), "")
 	}

@@ -84,7 +84,7 @@ func (p *plan) parts(f *fitting, pl *pile) error {
 			below := f.members[i-1]
 			fl, err := f.between(below, m, p.from[below.plane], z)
 			if err != nil {
-				return fault(p.job, "pins."+f.pin.Joint, err.Error(), "")
+				return fault(p.job, pinKey(p.job, f.pin.Joint), err.Error(), "")
 			}
 			p.filling(f, pl, fl)
 		}
@@ -149,7 +149,7 @@ func (p *plan) boltKit(f *fitting, pl *pile) error {
 	}
 	through, err := f.choose(pl.kit.Budget)
 	if err != nil {
-		return fault(p.job, "pins."+f.pin.Joint, err.Error(), "")
+		return fault(p.job, pinKey(p.job, f.pin.Joint), err.Error(), "")
 	}
 	through.From, through.To = tidy(face), tidy(face+max(through.Length, math.Ceil(through.Need*10-slack)/10))
 	if f.nut != nil {
@@ -170,7 +170,7 @@ func (p *plan) shaftKit(f *fitting, pl *pile) error {
 	if !first.held || !last.held {
 		var err error
 		if collar, err = hardware.CollarFor(f.pin.Shaft); err != nil {
-			return fault(p.job, "pins."+f.pin.Joint, fmt.Sprintf("joint %s: %v", f.pin.Joint, err),
+			return fault(p.job, pinKey(p.job, f.pin.Joint), fmt.Sprintf("joint %s: %v", f.pin.Joint, err),
 				"take a fit that holds the shaft (push, press), a bore with a flat, or a shaft that there are collars for")
 		}
 	}
