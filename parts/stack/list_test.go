@@ -86,8 +86,9 @@ func TestDemoList(t *testing.T) {
 
 // Axles without locknut want thread lock, once; hubs their screws.
 func TestConsumablesAndHubs(t *testing.T) {
-	hub := []job.Bore{{Joint: "A", Kind: job.HubBore, Diameter: 6, Bolts: 4, Circle: 20, Hole: 3.4}}
-	links := []at{{name: "a", stock: "s", plane: 1, pins: []string{"A", "B"}, bores: hub}, {name: "b", stock: "s", plane: 2, pins: []string{"A", "B"}}}
+	four := []job.Bore{{Joint: "A", Kind: job.HubBore, Diameter: 6, Bolts: 4, Circle: 20, Hole: 3.4}}
+	three := []job.Bore{{Joint: "B", Kind: job.HubBore, Diameter: 6, Bolts: 3, Circle: 20, Hole: 3.4}}
+	links := []at{{name: "a", stock: "s", plane: 1, pins: []string{"A", "B"}, bores: four}, {name: "b", stock: "s", plane: 2, pins: []string{"A", "B"}, bores: three}}
 	one, other := bolt("A", "M4"), bolt("B", "M4")
 	one.Nut, other.Nut = "plain", "thin"
 	j := jobOf(links, []job.Pin{one, other}, nil, sheet("s", 3.1, 3))
@@ -97,7 +98,7 @@ func TestConsumablesAndHubs(t *testing.T) {
 	if last.Kind != ConsumableLine || last.Need != 1 || last.Buy != 1 || !slices.Equal(last.Joints, []string{"A", "B"}) {
 		t.Errorf("%+v", last)
 	}
-	if l := lines[0]; l.Designation != "screw for a hole of 3.4 mm" || l.Need != 8 {
+	if l := lines[0]; l.Designation != "screw for a hole of 3.4 mm" || l.Need != 2*(4+3) {
 		t.Errorf("%+v", l)
 	}
 }

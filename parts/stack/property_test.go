@@ -47,6 +47,7 @@ func checkKits(t failer, j job.Job, kits []Kit, levels []Level) {
 		}
 	}
 	for _, k := range kits {
+		checkRoom(t, k, levels, plane)
 		z := math.Inf(-1)
 		for _, e := range k.Elements {
 			if math.Abs(e.To-e.From-e.Thickness) > 1e-8 || e.Thickness < 0 {
@@ -73,6 +74,39 @@ func checkKits(t failer, j job.Job, kits []Kit, levels []Level) {
 			continue
 		}
 		checkBolt(t, k)
+	}
+}
+
+// checkRoom: where the plane above or below a pin is empty, its end keeps off the part beyond.
+func checkRoom(t failer, k Kit, levels []Level, plane map[string]int) {
+	t.Helper()
+	var on []int
+	low, up := math.Inf(1), k.Through.To
+	for _, e := range k.Elements {
+		low, up = min(low, e.From), max(up, e.To)
+		if e.Kind == PartElement {
+			on = append(on, plane[e.Part])
+		}
+	}
+	for i, l := range levels {
+		beyond := i + 1
+		if l.Plane == slices.Max(on) && beyond < len(levels) && levels[beyond].Empty {
+			for levels[beyond].Empty {
+				beyond++
+			}
+			if levels[beyond].From-up < RunningGap-1e-8 {
+				t.Errorf("%s: its upper end at %g, the next part at %g", k.Joint, up, levels[beyond].From)
+			}
+		}
+		before := i - 1
+		if l.Plane == slices.Min(on) && before >= 0 && levels[before].Empty {
+			for levels[before].Empty {
+				before--
+			}
+			if low-levels[before].To < RunningGap-1e-8 {
+				t.Errorf("%s: its lower end at %g, the part below ends at %g", k.Joint, low, levels[before].To)
+			}
+		}
 	}
 }
 

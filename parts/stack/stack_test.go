@@ -134,6 +134,20 @@ func TestRoomForNuts(t *testing.T) {
 	}
 }
 
+// And for the head that begins above it: 4.0 and a washer of 0.8 (ISO 4762, 4 public tables agree), more
+// than the 2 + 2 x 0.8 of the empty plane.
+func TestRoomForHeads(t *testing.T) {
+	frame := &job.Frame{Stock: "s", Plates: []job.FramePlate{{Name: "back", Plane: 0, Pivots: []string{"G"}}}}
+	links := []at{
+		{name: "a", stock: "s", plane: 2, pins: []string{"G", "A"}},
+		{name: "b", stock: "s", plane: 3, pins: []string{"A", "B"}},
+	}
+	levels, err := Levels(jobOf(links, []job.Pin{bolt("A", "M4"), bolt("G", "M4")}, frame, sheet("s", 2.1, 2)))
+	if err != nil || !near(levels[2].From-levels[0].To, 5.3) {
+		t.Errorf("%v, want 5.3 mm over the empty plane (%v)", levels, err)
+	}
+}
+
 // Two sizes of bolt across one gap: M6 wants 1.6, which two M4 washers fill; M5 with washers of 1.0
 // leaves 0.6, so that the gap becomes 3.2: two of M6, three of M5 (0.2 play).
 func TestMixedWashers(t *testing.T) {
