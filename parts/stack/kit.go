@@ -3,6 +3,7 @@ package stack
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"pinwright/parts/hardware"
 	"pinwright/parts/job"
@@ -228,6 +229,9 @@ func (p *plan) remarks(f *fitting, k *Kit) {
 			note("The bolt is threaded to the head: the links turn on thread.")
 		}
 	}
+	if p.spacersUnsure(f, k) {
+		note("The sheets between are taken at their nominal thickness: measure them before cutting the spacers, and say measured.")
+	}
 	if f.open {
 		note("The frame is not in the job: add its thickness to the length.")
 	}
@@ -240,4 +244,15 @@ func (p *plan) remarks(f *fitting, k *Kit) {
 	if f.washer == nil && len(f.members) > 1 {
 		note("No washers: the parts rub on each other.")
 	}
+}
+
+// spacersUnsure tells whether a kit has a spacer whose length follows a thickness that was not measured.
+func (p *plan) spacersUnsure(f *fitting, k *Kit) bool {
+	if !slices.ContainsFunc(k.Elements, func(e Element) bool { return e.Kind == SpacerElement }) {
+		return false
+	}
+	first, last := f.members[0].plane, f.members[len(f.members)-1].plane
+	return slices.ContainsFunc(p.planes, func(plane int) bool {
+		return first <= plane && plane <= last && p.unsure[plane]
+	})
 }

@@ -13,6 +13,7 @@ type plan struct {
 	fittings []fitting
 	slabs    map[int]float64 // plane to thickness
 	planes   []int           // with parts, ascending
+	unsure   map[int]bool    // planes whose sheets are not all measured
 	from     map[int]float64 // height of the lower face
 	levels   []Level
 	kits     []Kit // one for every fitting, in their order; of one copy
@@ -20,7 +21,7 @@ type plan struct {
 
 // newPlan does steps 1 to 4 of the package's plan.
 func newPlan(j job.Job) (*plan, error) {
-	p := &plan{job: j, slabs: map[int]float64{}, from: map[int]float64{}}
+	p := &plan{job: j, slabs: map[int]float64{}, unsure: map[int]bool{}, from: map[int]float64{}}
 	var errs []error
 	for _, pin := range j.Pins {
 		f, err := fitOut(j, pin)
@@ -63,6 +64,7 @@ func (p *plan) lay() {
 				p.planes = append(p.planes, plane)
 			}
 			p.slabs[plane] = max(p.slabs[plane], s.Measured)
+			p.unsure[plane] = p.unsure[plane] || s.Measured == s.Thickness
 		}
 	}
 	for _, l := range p.job.Links {
