@@ -60,6 +60,14 @@ func TestFaults(t *testing.T) {
 			[]string{"link rocker: obstacle 1 at (8, 3) lies in the end of the bar at (0, 0), by 5.46 mm / move the obstacle away"},
 		},
 		{
+			"fillet into an obstacle", func(j *job.Job) {
+				l := link(j, "rocker")
+				l.Shape, l.Width, l.Fillet, l.Around = job.Bent, 14, 40, []outline.Disc{{Centre: pt(42, 2), Radius: 4}}
+				*pin(j, "B") = job.Pin{Joint: "B", Kind: job.BearingPin, Bearing: "624", Bolt: "M4", Fit: "press", Seats: []string{"rocker"}}
+			},
+			[]string{"link rocker: the bar comes to 0", "from obstacle 1 at (42, 2); it wants 1 mm / move or shrink the obstacle"},
+		},
+		{
 			"bore wider than its arm", on("crank", func(l *job.Link) {
 				l.Bores = []job.Bore{{Joint: "O", Kind: job.RoundBore, Diameter: 46}}
 			}),

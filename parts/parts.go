@@ -35,7 +35,7 @@ const (
 
 // Hole is one hole of a part.
 type Hole struct {
-	Name     string // "B", "hub 2 of 4", "window 1"
+	Name     string // "B", "O bolt 2 of 4", "window 1"
 	Kind     HoleKind
 	Joint    string // the joint it sits on, or ""
 	Centre   outline.Point

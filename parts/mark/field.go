@@ -38,10 +38,24 @@ func (f *field) node(row, column int) outline.Point {
 
 func (f *field) set(row, column int, far float64) { f.far[row*f.columns+column] = far }
 
-// bound returns a number that the signed distance at p does not exceed.
-func (f *field) bound(p outline.Point) float64 {
-	q := f.turn.Apply(p)
-	column := max(0, min(f.columns-1, int(math.Round((q.X-f.low.X)/f.pitch))))
-	row := max(0, min(f.rows-1, int(math.Round((q.Y-f.low.Y)/f.pitch))))
-	return f.far[row*f.columns+column] + q.Dist(f.node(row, column))
+// probe is a place about the middle of a text, in the frame of the field, and its least distance from
+// the cuts.
+type probe struct {
+	way  outline.Point
+	need float64
+}
+
+// allows is false if a probe about the place at is certain to come too near to a cut, by the nodes
+// about it.
+func (f *field) allows(at outline.Point, probes []probe) bool {
+	for _, p := range probes {
+		x, y := at.X+p.way.X, at.Y+p.way.Y
+		column := max(0, min(f.columns-1, int((x-f.low.X)/f.pitch+0.5)))
+		row := max(0, min(f.rows-1, int((y-f.low.Y)/f.pitch+0.5)))
+		dx, dy := x-f.low.X-float64(column)*f.pitch, y-f.low.Y-float64(row)*f.pitch
+		if short := p.need - f.far[row*f.columns+column]; short > 0 && short*short > dx*dx+dy*dy {
+			return false
+		}
+	}
+	return true
 }

@@ -26,9 +26,9 @@ type Fitted struct {
 //
 // Plan:
 //
-//  1. Candidates for the middle of the text: the points of a grid along the long axis, each also
-//     pushed away from the cut that is nearest to it until two cuts are equally near. Sorted: nearest
-//     to the centroid first.
+//  1. Candidates for the middle of the text: the points of a grid along the long axis, each also,
+//     where room is scarce, pushed away from the cut that is nearest to it until two cuts are
+//     equally near. Sorted: nearest to the centroid first.
 //  2. A height fits if for some angle (along the long axis, then the long edges, level, upright, then
 //     every 15 degrees), some breaking in lines and some candidate the boxes of the lines, turned, lie
 //     in the material and keep clear. The distance of the candidate from the cuts, known beforehand,
@@ -41,7 +41,7 @@ func Fit(region outline.Region, text string, want, least, clear float64) (Fitted
 	if text == "" || !(least > 0) || !(want >= least) || !(clear >= 0) || math.IsInf(want, 0) || len(region.Outer) < 2 {
 		return Fitted{}, false
 	}
-	s := newSearch(region, clear)
+	s := newSearch(region, want, clear)
 	if len(s.places) == 0 {
 		return Fitted{}, false
 	}
@@ -102,9 +102,10 @@ func breakings(text string) [][]string {
 
 // place is a candidate for the middle of a text.
 type place struct {
-	at  outline.Point
-	far float64 // from the nearest cut, mm
-	off float64 // from the centroid, mm
+	at   outline.Point
+	node outline.Point // the same in the frame of the field
+	far  float64       // from the nearest cut, mm
+	off  float64       // from the centroid, mm
 }
 
 type search struct {
@@ -119,7 +120,7 @@ type search struct {
 // gridSize is about how many points the grid has in the part's box.
 const gridSize = 1200
 
-func newSearch(region outline.Region, clear float64) *search {
+func newSearch(region outline.Region, want, clear float64) *search {
 	s := &search{region: region, cuts: outline.EdgesOf(region), clear: clear}
 	m := region.Moments()
 	// Long axis: the direction in which the material spreads most; level for a shape without one.
@@ -151,10 +152,13 @@ func newSearch(region outline.Region, clear float64) *search {
 			if far <= clear {
 				continue
 			}
-			s.places = append(s.places, place{p, far, p.Dist(m.Centroid)})
+			s.places = append(s.places, place{p, s.field.node(i, k), far, p.Dist(m.Centroid)})
+			if far > clear+want {
+				continue // room enough for two lines
+			}
 			if q, further := s.push(p, far, pitch); further > far {
 				far = further
-				s.places = append(s.places, place{q, far, q.Dist(m.Centroid)})
+				s.places = append(s.places, place{q, turn.Apply(q), far, q.Dist(m.Centroid)})
 			}
 		}
 	}
@@ -240,14 +244,11 @@ func (s *search) at(breaks [][]string, height float64) (choice, bool) {
 			if !(width > 0) {
 				continue
 			}
-			need := s.clear
-			if len(lines)%2 == 1 {
-				need += min(width, height) / 2
-			}
 			turn := outline.Place(angle, false, outline.Point{})
 			middle := turn.Apply(outline.Point{X: width / 2, Y: total / 2})
+			probes := s.probes(boxes, turn, middle)
 			for _, p := range s.places {
-				if p.far < need {
+				if !s.field.allows(p.node, probes) {
 					continue
 				}
 				at := turn
@@ -276,25 +277,39 @@ func lineBoxes(lines []string, height float64) (boxes []outline.Box, width, tota
 	return boxes, width, total
 }
 
+// probes are places of a text about its middle, in the frame of the field, and how far from the cuts
+// each of them must be: corners of the boxes, and their middle lines, where there is half a height
+// more.
+func (s *search) probes(boxes []outline.Box, turn outline.Transform, middle outline.Point) []probe {
+	var out []probe
+	add := func(p outline.Point, need float64) {
+		way := turn.Apply(p).Sub(middle)
+		f := s.field.turn
+		out = append(out, probe{outline.Point{X: f.Cos*way.X - f.Sin*way.Y, Y: f.Sin*way.X + f.Cos*way.Y}, need})
+	}
+	for _, b := range boxes {
+		for _, p := range corners(b) {
+			add(p, s.clear)
+		}
+	}
+	for _, b := range boxes {
+		half := min(b.Width(), b.Height()) / 2
+		for x := b.Min.X + half; x <= b.Max.X-half; x += s.field.pitch {
+			add(outline.Point{X: x, Y: (b.Min.Y + b.Max.Y) / 2}, s.clear+half)
+		}
+	}
+	return out
+}
+
+func corners(b outline.Box) [4]outline.Point {
+	return [4]outline.Point{b.Min, {X: b.Max.X, Y: b.Min.Y}, b.Max, {X: b.Min.X, Y: b.Max.Y}}
+}
+
 // keeps says whether all boxes, moved, lie in the material and clear of the cuts.
 func (s *search) keeps(boxes []outline.Box, at outline.Transform) bool {
 	for _, b := range boxes {
-		corners := [4]outline.Point{b.Min, {X: b.Max.X, Y: b.Min.Y}, b.Max, {X: b.Min.X, Y: b.Max.Y}}
-		for i, p := range corners {
-			corners[i] = at.Apply(p)
-			if s.field.bound(corners[i]) < s.clear {
-				return false
-			}
-		}
-		// Along the middle of the box there is half a height more.
-		half := min(b.Width(), b.Height()) / 2
-		for x := b.Min.X + half; x <= b.Max.X-half; x += s.field.pitch {
-			if s.field.bound(at.Apply(outline.Point{X: x, Y: (b.Min.Y + b.Max.Y) / 2})) < s.clear+half {
-				return false
-			}
-		}
-		for _, p := range corners {
-			if s.cuts.Depth(p) < s.clear {
+		for _, p := range corners(b) {
+			if s.cuts.Depth(at.Apply(p)) < s.clear {
 				return false
 			}
 		}
