@@ -9,7 +9,7 @@ import (
 
 // A job in, what every pin carries and what is to be bought out.
 func Example() {
-	j, err := job.Read("../../testdata/jobs/demo.yaml")
+	j, err := job.Read("testdata/arms.yaml")
 	if err != nil {
 		fmt.Println(err)
 		return

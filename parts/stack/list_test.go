@@ -41,12 +41,12 @@ func TestSpare(t *testing.T) {
 	}
 }
 
-// The list of the demo, counted by hand: four arms, each with one bolt through both plates (C), two
+// The list of the arms, counted by hand: four arms, each with one bolt through both plates (C), two
 // through two links (A, B) and a shaft; two mounting holes each. Washers M4: C 5 (head, back, rocker
 // from both sides, front, nut: head|back, back|spacer, spacer|rocker, rocker|front, front|nut), A and B
 // 3 each: 44. 10 % spare, rounded up, at least 1.
-func TestDemoList(t *testing.T) {
-	j, err := job.Read("../../testdata/jobs/demo.yaml")
+func TestArmsList(t *testing.T) {
+	j, err := job.Read("testdata/arms.yaml")
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -354,7 +354,7 @@ func TestBadInput(t *testing.T) {
 
 // An error carries its place when the job came from a file.
 func TestErrorsHavePlaces(t *testing.T) {
-	j, err := job.Read("../../testdata/jobs/demo.yaml")
+	j, err := job.Read("testdata/arms.yaml")
 	if err != nil {
 		t.Fatal(err)
 	}
