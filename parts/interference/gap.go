@@ -4,6 +4,7 @@ import (
 	"container/heap"
 	"fmt"
 	"math"
+	"slices"
 
 	"pinwright/parts/linkage"
 	"pinwright/parts/outline"
@@ -12,6 +13,7 @@ import (
 // Options says how exact the answer must be.
 type Options struct {
 	Accuracy float64 // mm; the smallest gap is wanted to this
+	Share    float64 // and to this share of itself: 0.02 leaves a gap of 5 mm open by another 0.1 mm
 	Limit    float64 // mm; pairs that never come closer are not looked at further: their gap is given as Limit
 	Boxes    int     // at most so many boxes a pair
 }
@@ -160,6 +162,8 @@ type carried struct {
 	corners [4]Point
 	centre  Point
 	radius  float64
+	disc    bool // a disc about the joint that carries it
+	convex  bool // the outer outline
 }
 
 func (s *Space) carry(b Body) (carried, error) {
@@ -182,6 +186,10 @@ func (s *Space) carry(b Body) (carried, error) {
 	c.corners = [4]Point{box.Min, {X: box.Max.X, Y: box.Min.Y}, box.Max, {X: box.Min.X, Y: box.Max.Y}}
 	c.centre = box.Min.Add(box.Max).Scale(0.5)
 	c.radius = box.Max.Sub(box.Min).Len() / 2
+	if at, r, ok := b.Region.Outer.AsCircle(); ok && b.Carrier == OnJoint && at.Len() < 1e-9 {
+		c.disc, c.radius = true, r
+	}
+	c.convex = convex(b.Region.Outer)
 	return c, nil
 }
 
@@ -248,6 +256,69 @@ func (s *Space) approach(p pose, half []float64, a, b carried, ta, tb outline.Tr
 	return math.Min(bound(a, ta), bound(b, tb))
 }
 
+// approachDisc is approach for a disc about a joint and a convex body, when it can say more; near is the
+// shortest way between them at the middle, from the body to the disc.
+//
+// Seen from the body, the disc's centre c is displaced by the vector w = e_c - e_body(c), turned back by
+// the turn phi of the body within the box. A convex body lies behind the line square to the shortest
+// way n, so the gap shrinks by no more than -n.w <= |n.V| d + strays, and by |phi| |w| for the turning
+// back. phi <= pi/2 times the chord, which the joints' displacements bound.
+func (s *Space) approachDisc(p pose, half []float64, disc, body carried, near outline.Nearest) float64 {
+	centre := p.at[disc.index]
+	n := centre.Sub(near.A)
+	if n.Len() < 1e-9 {
+		return math.Inf(1)
+	}
+	n = n.Unit()
+	strays := s.stray(p, disc, centre) + s.stray(p, body, centre)
+	along, whole := strays, strays
+	for k := range half {
+		v := s.field(p, disc, centre, k).Sub(s.field(p, body, centre, k))
+		along += math.Abs(n.Dot(v)) * half[k]
+		whole += v.Len() * half[k]
+	}
+	return along + s.turnBound(p, half, body)*whole
+}
+
+// turnBound bounds how far a body turns within the box, radians.
+func (s *Space) turnBound(p pose, half []float64, b carried) float64 {
+	if b.Carrier != OnLink {
+		return 0
+	}
+	link := s.m.links[b.index]
+	i, k := link.pins[0], link.pins[1]
+	chord := p.rho[i] + p.rho[k]
+	for q := range half {
+		chord += p.vel[q][i].Sub(p.vel[q][k]).Len() * half[q]
+	}
+	return math.Pi / 2 * chord / link.length
+}
+
+// convex tells whether an outer outline turns left all the way.
+func convex(o outline.Outline) bool {
+	segments := o.Segments()
+	for i, a := range segments {
+		b := segments[(i+1)%len(segments)]
+		if a.Bulge < 0 || a.Tangent(1).Cross(b.Tangent(0)) < -1e-9 {
+			return false
+		}
+	}
+	return true
+}
+
+// rigid tells whether two bodies never move against each other: both are discs about pins of one link.
+func (s *Space) rigid(a, b carried) bool {
+	if !a.disc || !b.disc {
+		return false
+	}
+	for _, l := range s.m.links {
+		if slices.Contains(l.pins, a.index) && slices.Contains(l.pins, b.index) {
+			return true
+		}
+	}
+	return false
+}
+
 // Smallest returns the smallest gap between two bodies over the whole motion, seen from above:
 // heights are the caller's business.
 //
@@ -263,6 +334,7 @@ func (s *Space) Smallest(a, b Body, o Options) (Gap, error) {
 		return Gap{}, err
 	}
 	best := Gap{MM: o.Limit}
+	allowed := func(gap float64) float64 { return o.Accuracy + o.Share*gap }
 	var open boxHeap
 	visit := func(x box) error {
 		best.Boxes++
@@ -281,20 +353,30 @@ func (s *Space) Smallest(a, b Body, o Options) (Gap, error) {
 			best.MM, best.At = near.Distance, near.A
 			best.Angle, best.Settings = x.mid[0], append([]float64(nil), x.mid[1:]...)
 		}
+		switch {
+		case cb.disc && ca.convex:
+			come = math.Min(come, s.approachDisc(p, x.half, cb, ca, near))
+		case ca.disc && cb.convex:
+			come = math.Min(come, s.approachDisc(p, x.half, ca, cb, outline.Nearest{A: near.B, B: near.A}))
+		}
 		x.low = near.Distance - come
-		if x.low < best.MM-o.Accuracy {
+		if x.low < best.MM-allowed(best.MM) {
 			heap.Push(&open, x)
 		}
 		return nil
 	}
-	for _, x := range s.firstBoxes() {
+	boxes := s.firstBoxes()
+	if s.rigid(ca, cb) {
+		boxes = boxes[:1]
+	}
+	for _, x := range boxes {
 		if err := visit(x); err != nil {
 			return Gap{}, err
 		}
 	}
-	for open.Len() > 0 {
+	for open.Len() > 0 && !s.rigid(ca, cb) {
 		x := heap.Pop(&open).(box)
-		if best.MM == 0 || x.low >= best.MM-o.Accuracy {
+		if best.MM == 0 || x.low >= best.MM-allowed(best.MM) {
 			break
 		}
 		if best.Boxes >= o.Boxes {
@@ -311,6 +393,6 @@ func (s *Space) Smallest(a, b Body, o Options) (Gap, error) {
 			}
 		}
 	}
-	best.Error = o.Accuracy
+	best.Error = allowed(best.MM)
 	return best, nil
 }
