@@ -72,7 +72,6 @@ func (g *arrangement) apart(inside func(w [2]int) bool) []loop {
 // boundary returns the edges of the boundary, directed, the inside on their left. ok is false if they do not
 // close up.
 func (g *arrangement) boundary(inside func(w [2]int) bool) (kept []edge, ok bool) {
-	g.settle()
 	g.cut()
 	chains := g.chains()
 	index := newHeightIndex(g, len(chains))

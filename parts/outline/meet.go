@@ -16,19 +16,6 @@ func (g *arrangement) hit(i int32, s float64, v int32) {
 	}
 }
 
-// has says whether node v (a root) is on curve i already.
-func (g *arrangement) has(i, v int32) bool {
-	if g.root(g.ends[i][0]) == v || g.root(g.ends[i][1]) == v {
-		return true
-	}
-	for k := g.head[i]; k >= 0; k = g.splits[k].next {
-		if g.root(g.splits[k].node) == v {
-			return true
-		}
-	}
-	return false
-}
-
 // meet finds what curves i and j have in common.
 func (g *arrangement) meet(i, j int32) {
 	ci, cj := &g.curves[i], &g.curves[j]
@@ -40,13 +27,8 @@ func (g *arrangement) meet(i, j int32) {
 			return
 		}
 	}
-	touched := joined || other
-	if g.endsOn(i, j) {
-		touched = true
-	}
-	if g.endsOn(j, i) {
-		touched = true
-	}
+	g.endsOn(i, j)
+	g.endsOn(j, i)
 	pts, n := crossings(ci, cj, g.tol)
 	for _, p := range pts[:n] {
 		si, ok := ci.on(p, g.tol)
@@ -57,7 +39,6 @@ func (g *arrangement) meet(i, j int32) {
 		if !ok {
 			continue
 		}
-		touched = true
 		var v int32
 		switch {
 		case si <= g.tol:
@@ -74,14 +55,10 @@ func (g *arrangement) meet(i, j int32) {
 		g.hit(i, si, v)
 		g.hit(j, sj, v)
 	}
-	if touched {
-		g.touching = append(g.touching, [2]int32{i, j})
-	}
 }
 
 // endsOn puts the ends of curve i that lie on curve j there.
-func (g *arrangement) endsOn(i, j int32) bool {
-	touched := false
+func (g *arrangement) endsOn(i, j int32) {
 	b := &g.boxes[j]
 	for _, v := range g.ends[i] {
 		p := g.nodes[v]
@@ -89,15 +66,12 @@ func (g *arrangement) endsOn(i, j int32) bool {
 			continue
 		}
 		if r := g.root(v); r == g.root(g.ends[j][0]) || r == g.root(g.ends[j][1]) {
-			touched = true
 			continue
 		}
 		if s, ok := g.curves[j].on(p, g.tol); ok {
 			g.hit(j, s, v)
-			touched = true
 		}
 	}
-	return touched
 }
 
 // turnsLittle says that c and the curve d that follows it turn by clearly less than half a turn in
@@ -116,43 +90,4 @@ func turnsLittle(c, d *curve) bool {
 		return turn == 0
 	}
 	return false
-}
-
-// settle completes step 3: nodes of touching curves are put on both, until nothing changes.
-func (g *arrangement) settle() {
-	for range 16 {
-		changed := false
-		for _, t := range g.touching {
-			if g.share(t[0], t[1]) {
-				changed = true
-			}
-			if g.share(t[1], t[0]) {
-				changed = true
-			}
-		}
-		if !changed {
-			return
-		}
-	}
-}
-
-// share puts the nodes of curve i that lie on curve j there too.
-func (g *arrangement) share(i, j int32) bool {
-	changed := false
-	try := func(v int32) {
-		v = g.root(v)
-		if g.has(j, v) {
-			return
-		}
-		if s, ok := g.curves[j].on(g.nodes[v], g.tol); ok {
-			g.hit(j, s, v)
-			changed = true
-		}
-	}
-	try(g.ends[i][0])
-	try(g.ends[i][1])
-	for k := g.head[i]; k >= 0; k = g.splits[k].next {
-		try(g.splits[k].node)
-	}
-	return changed
 }

@@ -217,10 +217,7 @@ func TestOffsetOnRandomShapes(t *testing.T) {
 			}
 			o := Offset(a, d)
 			// Off the lattice short arcs fix their directions badly, and a second try may have been needed.
-			close := 2e-8
-			if k == nearLattice {
-				close = 1e-6
-			}
+			close := [...]float64{general: 1e-9, onLattice: 2e-9, nearLattice: 1e-6}[k]
 			valid(t, "offset", o, k)
 			// Every vertex and middle of the result is at exactly |d| from the original.
 			for _, reg := range o {
