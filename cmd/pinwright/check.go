@@ -1,8 +1,10 @@
 package main
 
 import (
+	"errors"
 	"fmt"
-	"math"
+	"io"
+	"strings"
 
 	"github.com/spf13/cobra"
 
@@ -13,47 +15,163 @@ import (
 )
 
 func checkCommand(t terminal) *cobra.Command {
+	var asJSON bool
 	c := &cobra.Command{
 		Use:   "check JOB",
 		Short: "Tell whether a job goes together, without writing anything",
-		Args:  cobra.ExactArgs(1),
+		Long: `Works a job out and says in words what it comes to: does the linkage close and
+turn, transmission angles and toggles, the path of the traced joints, what each pin
+carries, the smallest gaps between everything that moves, and the parts.`,
+		Example: `  pinwright check arm.yaml
+  pinwright check arm.yaml --json | jq .gaps`,
+		Args: cobra.ExactArgs(1),
 		RunE: func(_ *cobra.Command, args []string) error {
 			j, _, err := readJob(args[0])
 			if err != nil {
 				return err
 			}
 			p, err := buildable(j)
-			if p.motion.cycle != nil {
-				printMotion(t.out, j, p.motion)
+			var gaps []assembly.Gap
+			if err == nil {
+				gaps, err = p.gaps()
+			}
+			if asJSON {
+				if err := writeJSON(t.out, p.findings(gaps, err)); err != nil {
+					return system(err)
+				}
+			} else {
+				p.print(t.out, gaps)
 			}
 			if err != nil {
 				return refused(err)
 			}
-			gaps, err := p.gaps()
-			if err != nil {
+			if err := p.clashes(gaps); err != nil {
 				return refused(err)
 			}
-			for _, g := range gaps {
-				fmt.Fprintf(t.out, "gap %-20s %-20s %.2f at %.1f\n", g.A, g.B, g.MM, degrees(g.Angle))
+			if !asJSON {
+				fmt.Fprintf(t.out, "%-13s it goes together\n", "verdict")
 			}
 			return nil
 		},
 	}
+	c.Flags().BoolVar(&asJSON, "json", false, "print the findings as JSON")
 	return c
+}
+
+// print tells in words what is known of a job; what was not reached is left out.
+func (p plan) print(w io.Writer, gaps []assembly.Gap) {
+	if p.motion.cycle != nil {
+		printMotion(w, p.job, p.motion)
+	}
+	for _, k := range p.kits {
+		if k.Copy == p.job.Copies[0].Name {
+			fmt.Fprintf(w, "%-13s %s: %s\n", "pin", k.Joint, kitWords(k))
+		}
+	}
+	for i, g := range gaps {
+		if i == shownGaps {
+			fmt.Fprintf(w, "%-13s and %d more, all wider\n", "", len(gaps)-i)
+			break
+		}
+		note := ""
+		if g.MM < stack.RunningGap {
+			note = "  tight: play in the pins may let them touch"
+		}
+		fmt.Fprintf(w, "%-13s %.2f mm between %s and %s, drive %.1f deg%s%s\n", "gap", g.MM, g.A, g.B, degrees(g.Angle), p.settingWords(g), note)
+	}
+	if len(p.parts) > 0 {
+		fmt.Fprintf(w, "%-13s %d in %d copies, all can be cut\n", "parts", len(p.parts), len(p.job.Copies))
+	}
+}
+
+// shownGaps is how many of the smallest gaps are printed.
+const shownGaps = 12
+
+// kitWords says what a pin carries, from head to nut.
+func kitWords(k stack.Kit) string {
+	var names []string
+	for _, e := range k.Elements {
+		switch e.Kind {
+		case stack.PartElement:
+			names = append(names, e.Part)
+		case stack.HeadElement:
+		default:
+			names = append(names, e.What)
+		}
+	}
+	return fmt.Sprintf("%s through %s", k.Through.Designation, strings.Join(names, ", "))
+}
+
+// settingWords names the adjustable pivots at which a gap occurs.
+func (p plan) settingWords(g assembly.Gap) string {
+	var words []string
+	for i, name := range p.adjustable() {
+		if i < len(g.Settings) {
+			words = append(words, fmt.Sprintf("%s at %.2f of its range", name, g.Settings[i]))
+		}
+	}
+	if len(words) == 0 {
+		return ""
+	}
+	return ", " + strings.Join(words, ", ")
+}
+
+// adjustable lists the adjustable pivots in the order of the joints.
+func (p plan) adjustable() []string {
+	var out []string
+	for _, joint := range p.job.Linkage.Joints {
+		if joint.Ground != nil && joint.Ground.Range != nil {
+			out = append(out, joint.Name)
+		}
+	}
+	return out
+}
+
+// clashes is an error that names everything that touches.
+func (p plan) clashes(gaps []assembly.Gap) error {
+	var faults []error
+	for _, g := range gaps {
+		if g.MM > 0 {
+			break
+		}
+		faults = append(faults, p.job.Fault(p.pathOf(g),
+			fmt.Sprintf("%s and %s touch at drive angle %.1f deg%s, near (%.1f, %.1f) in the linkage, at heights %.1f to %.1f mm",
+				g.A, g.B, degrees(g.Angle), p.settingWords(g), g.At.X, g.At.Y, g.Low, g.Up),
+			"put one of them on another plane, make it slimmer, or bend it out of the way"))
+	}
+	return errors.Join(faults...)
+}
+
+// pathOf is the key path of a link or plate that takes part in a gap.
+func (p plan) pathOf(g assembly.Gap) string {
+	for _, name := range []string{g.A, g.B} {
+		for _, l := range p.job.Links {
+			if l.Name == name {
+				return "linkage.links." + name
+			}
+		}
+		if p.job.Frame != nil {
+			for _, f := range p.job.Frame.Plates {
+				if f.Name == name {
+					return "frame.plates." + name
+				}
+			}
+		}
+	}
+	return "linkage"
 }
 
 // gaps returns the smallest gaps of the mechanism, one copy of it.
 func (p plan) gaps() ([]assembly.Gap, error) {
 	j := p.job
-	name := ""
-	found := false
+	list, kits := p.parts, p.kits
+	name, found := "", false
 	for _, c := range j.Copies {
 		if !c.Mirror {
 			name, found = c.Name, true
 			break
 		}
 	}
-	list, kits := p.parts, p.kits
 	if !found {
 		// Every copy is a mirror image: look at the original, which has the same gaps.
 		j.Copies = []job.Copy{{}}
@@ -71,24 +189,20 @@ func (p plan) gaps() ([]assembly.Gap, error) {
 			one = append(one, x)
 		}
 	}
-	var kit []stack.Kit
+	var pins []stack.Kit
 	for _, k := range kits {
 		if k.Copy == name {
-			kit = append(kit, k)
+			pins = append(pins, k)
 		}
 	}
-	return assembly.Gaps(j, p.motion.mechanism, one, kit, p.levels)
+	return assembly.Gaps(j, p.motion.mechanism, one, pins, p.levels)
 }
 
-// prove makes sure that nothing touches.
+// prove makes sure that nothing touches through the whole motion.
 func (p plan) prove() error {
 	gaps, err := p.gaps()
 	if err != nil {
 		return err
 	}
-	if len(gaps) > 0 && gaps[0].MM <= 0 {
-		g := gaps[0]
-		return fmt.Errorf("%s and %s touch at drive angle %.1f deg", g.A, g.B, g.Angle*180/math.Pi)
-	}
-	return nil
+	return p.clashes(gaps)
 }
