@@ -5,7 +5,7 @@ import (
 	"math"
 
 	"pinwright/export"
-	"pinwright/nest/fallback"
+	"pinwright/nest"
 	"pinwright/parts/job"
 	"pinwright/parts/outline"
 )

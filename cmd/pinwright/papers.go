@@ -207,14 +207,17 @@ func drawn(c kerf.Cut, k int) float64 {
 func fixed(v float64, digits int) string { return strconv.FormatFloat(v, 'f', digits, 64) }
 
 func (p plan) hardwareTable() pdf.Table {
-	t := pdf.Table{Columns: []pdf.Column{{Head: "to buy"}, {Head: "need", Right: true}, {Head: "spare", Right: true}, {Head: "buy", Right: true}, {Head: "packs", Right: true}, {Head: "for joints"}, {Head: "note"}}}
+	t := pdf.Table{Columns: []pdf.Column{{Head: "to buy"}, {Head: "length, mm", Right: true}, {Head: "need", Right: true}, {Head: "spare", Right: true}, {Head: "buy", Right: true}, {Head: "packs", Right: true}, {Head: "for joints"}, {Head: "note"}}}
 	for _, l := range p.lines {
-		packs := ""
+		packs, length := "", ""
+		if l.Length > 0 {
+			length = strconv.FormatFloat(l.Length, 'f', -1, 64)
+		}
 		if l.Packs > 0 {
 			packs = fmt.Sprintf("%d of %d", l.Packs, l.Pack)
 		}
 		t.Rows = append(t.Rows, []string{
-			l.Designation, strconv.Itoa(l.Need), strconv.Itoa(l.Spare), strconv.Itoa(l.Buy), packs, strings.Join(l.Joints, " "), l.Note,
+			l.Designation, length, strconv.Itoa(l.Need), strconv.Itoa(l.Spare), strconv.Itoa(l.Buy), packs, strings.Join(l.Joints, " "), l.Note,
 		})
 	}
 	return t

@@ -7,7 +7,7 @@ import (
 
 	"pinwright/export"
 	"pinwright/kerf"
-	"pinwright/nest/fallback"
+	"pinwright/nest"
 	"pinwright/parts"
 	"pinwright/parts/job"
 	"pinwright/parts/outline"

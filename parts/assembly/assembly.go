@@ -153,7 +153,8 @@ func ofParts(j job.Job, list []parts.Part, levels []stack.Level) []thing {
 }
 
 // ofCrossMembers makes bodies of what stands between the outermost frame plates: seen from above, the
-// width and the measured thickness of the member.
+// width and the measured thickness of the member. Its height here reaches into the plates, which do
+// not move against it.
 func ofCrossMembers(j job.Job, levels []stack.Level) []thing {
 	if j.Frame == nil || len(j.Frame.Plates) < 2 {
 		return nil
@@ -161,7 +162,7 @@ func ofCrossMembers(j job.Job, levels []stack.Level) []thing {
 	low, high := math.Inf(1), math.Inf(-1)
 	for _, p := range j.Frame.Plates {
 		if l, ok := levelOf(levels, p.Plane); ok {
-			low, high = math.Min(low, l.To), math.Max(high, l.From)
+			low, high = math.Min(low, l.From), math.Max(high, l.From)
 		}
 	}
 	var out []thing
@@ -195,7 +196,7 @@ func ofKits(kits []stack.Kit) []thing {
 		}
 		for _, e := range k.Elements {
 			switch e.Kind {
-			case stack.PartElement, stack.BearingElement:
+			case stack.PartElement:
 			default:
 				add(string(e.Kind), e.Diameter, e.From, e.To)
 			}
