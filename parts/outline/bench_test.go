@@ -27,7 +27,7 @@ func BenchmarkOffset1000Segments(b *testing.B) {
 	for _, c := range []struct {
 		name string
 		d    float64
-	}{{"Out", 0.09}, {"In", -0.09}, {"Out1mm", 1}} {
+	}{{"Out", 0.09}, {"In", -0.09}, {"OutClosingGaps", 1}} {
 		b.Run(c.name, func(b *testing.B) {
 			rs := []Region{{Outer: gear(1000)}}
 			if err := rs[0].Validate(); err != nil {

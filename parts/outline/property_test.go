@@ -71,12 +71,16 @@ func TestBooleanProperties(t *testing.T) {
 		if rest := Difference(a, a); len(rest) > 0 {
 			t.Fatalf("a less a is %v", rest)
 		}
-		// chi(A) + chi(B) = chi(A union B) + chi(A intersection B), where nothing merely touches.
+		// chi(A) + chi(B) = chi(A union B) + chi(A intersection B) for closed sets. Ours leave out what is common
+		// without having an area (edges that touch), so only where nothing changes when either grows or shrinks a hair.
 		u, i := join(a, b), Intersection(a, b)
-		steady := func(rs []Region) bool {
-			return euler(Offset(rs, 1e-4)) == euler(rs) && euler(Offset(rs, -1e-4)) == euler(rs)
+		steady := true
+		for _, e := range []float64{1e-4, -1e-4} {
+			x := Offset(a, e)
+			steady = steady && euler(x) == euler(a) && euler(join(x, b)) == euler(u) && euler(Intersection(x, b)) == euler(i)
+			steady = steady && euler(Offset(b, e)) == euler(b)
 		}
-		if steady(a) && steady(b) && steady(u) && steady(i) && euler(a)+euler(b) != euler(u)+euler(i) {
+		if steady && euler(a)+euler(b) != euler(u)+euler(i) {
 			t.Fatalf("Euler characteristics: %d + %d is not %d + %d", euler(a), euler(b), euler(u), euler(i))
 		}
 	})
