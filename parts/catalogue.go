@@ -13,7 +13,8 @@ import (
 
 // holeFor returns the hole that a pin asks for in a link or frame plate, about the origin: the seat of
 // a bearing where it sits, else the clearance hole of the bolt or the fit of the shaft. The bolt
-// through a bearing has a medium hole (ISO 273) in the other parts: the pin's fit is the bearing's.
+// through a bearing has the closest clearance hole in the other parts (fine, close): they are clamped, so
+// that hole alone holds their place, and the pin's fit is the bearing's.
 func holeFor(p job.Pin, part string) (drilling, error) {
 	spec := hardware.Spec{Fit: p.Fit, Clearance: p.Clearance}
 	kind := PinHole
@@ -24,7 +25,10 @@ func holeFor(p job.Pin, part string) (drilling, error) {
 	case p.Kind == job.BearingPin && len(p.Seats) == 0:
 		return drilling{}, fmt.Errorf("the bearing of joint %s sits in no part: say in which, in: [...]", p.Joint)
 	case p.Kind == job.BearingPin:
-		spec = hardware.Spec{Kind: hardware.Bolt, Size: p.Bolt, Fit: "medium"}
+		spec = hardware.Spec{Kind: hardware.Bolt, Size: p.Bolt, Fit: "fine"}
+		if hardware.IsInch(p.Bolt) {
+			spec.Fit = "close"
+		}
 	case p.Kind == job.ShaftPin:
 		spec.Kind, spec.Diameter = hardware.Shaft, p.Shaft
 	default:

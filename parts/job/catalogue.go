@@ -57,3 +57,12 @@ func (r *reader) material(v *value) string {
 	}
 	return v.text
 }
+
+// usualGrain is how parts of a material may be turned when the job does not say.
+func usualGrain(v *value) string {
+	m, err := material.Lookup(v.textOr(""))
+	if err != nil {
+		return string(NoGrain)
+	}
+	return m.Grain
+}

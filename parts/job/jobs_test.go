@@ -317,3 +317,20 @@ func BenchmarkReadDemo(b *testing.B) {
 		}
 	}
 }
+
+// The grain follows the material when the job does not say.
+func TestUsualGrain(t *testing.T) {
+	for material, want := range map[string]Grain{"cast acrylic": NoGrain, "birch plywood": HalfTurn} {
+		text := strings.ReplaceAll(string(Starter()), "material: cast acrylic", "material: "+material)
+		text = strings.ReplaceAll(text, "    grain: none ", "    # ")
+		j, err := Parse("job.yaml", []byte(text), nil)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, s := range j.Stock {
+			if s.Grain != want {
+				t.Errorf("%s: grain %s, want %s", material, s.Grain, want)
+			}
+		}
+	}
+}

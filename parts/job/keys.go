@@ -208,7 +208,7 @@ var stockForm = table("stock",
 	key{name: "web", form: between(length, 0, 200), about: "Material left between two cuts. Left out: the thickness.", slips: []string{"gap", "spacing"}},
 	key{name: "kerf", need: true, form: between(length, 0, 1.5), about: "FULL width that the beam takes away, not the loss on one side. Measured, never guessed.", advice: kerfAdvice},
 	key{name: "compensated-by", form: choice("pinwright", "shop"), about: "Who moves the cut off the line by half the kerf: pinwright (paths are the beam's middle) or the shop (paths are finished size). Left out: pinwright."},
-	key{name: "grain", form: choice(string(NoGrain), string(HalfTurn), string(Quarter), string(Fixed)), about: "How parts may be turned on the sheet: none (free), half-turn, quarter-turn, fixed. Left out: none."},
+	key{name: "grain", form: choice(string(NoGrain), string(HalfTurn), string(Quarter), string(Fixed)), about: "How parts may be turned on the sheet: none (free), half-turn, quarter-turn, fixed. Left out: what the material wants, half-turn for wood with a grain."},
 	key{name: "price", form: between(plain, 0, 1e6), about: "Price of a sheet, in your money.", slips: []string{"cost"}},
 )
 

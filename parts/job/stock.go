@@ -50,7 +50,7 @@ func (r *reader) stocks(v *value) []Stock {
 			Web:       s.get("web").numberOr(t),
 			Kerf:      s.get("kerf").numberOr(0),
 			ByShop:    s.get("compensated-by").textOr("pinwright") == "shop",
-			Grain:     Grain(s.get("grain").textOr(string(NoGrain))),
+			Grain:     Grain(s.get("grain").textOr(usualGrain(s.get("material")))),
 			Price:     s.get("price").numberOr(0),
 		}
 		if m := s.get("measured"); m.ok() && s.get("thickness").ok() {
