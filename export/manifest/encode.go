@@ -12,13 +12,14 @@ import (
 // maxBytes is the largest manifest that is read; a thousand parts take some three megabytes.
 const maxBytes = 256 << 20
 
-// Encode writes a manifest, indented, keys in a fixed order. A manifest that Validate refuses is not
+// Encode writes a manifest, indented, keys in a fixed order, numbers to nine decimals. A manifest that Validate refuses is not
 // written.
 func Encode(w io.Writer, m Manifest) error {
 	if err := m.Validate(); err != nil {
 		return fmt.Errorf("manifest: %w", err)
 	}
 	m.fill()
+	m = settled(m)
 	var buf bytes.Buffer
 	enc := json.NewEncoder(&buf)
 	enc.SetEscapeHTML(false)

