@@ -92,9 +92,7 @@ func roomFor(b Beam) float64 { return math.Ceil(b.Width*11-1e-9) / 10 }
 func narrow(o outline.Outline, moved []outline.Outline, b Beam, what string) *Error {
 	var edges outline.Region
 	for _, m := range moved {
-		for _, e := range run(m, b) {
-			edges.Holes = append(edges.Holes, e)
-		}
+		edges.Holes = append(edges.Holes, run(m, b)...)
 	}
 	left := outline.EdgesOf(edges)
 	e := &Error{Beam: b.Width}

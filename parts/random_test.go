@@ -188,7 +188,8 @@ func TestRandomParts(t *testing.T) {
 		if yes("bore") {
 			bores := []job.Bore{
 				{Joint: "O", Kind: job.DBore, Diameter: 6, Flat: 5.5},
-				{Joint: "O", Kind: job.HexagonBore, Across: 7}, {Joint: "O", Kind: job.HubBore, Diameter: 5, Bolts: 3, Circle: 16, Hole: 3.2},
+				{Joint: "O", Kind: job.HexagonBore, Across: 7},
+				{Joint: "O", Kind: job.HubBore, Diameter: 5, Bolts: 3, Circle: 16, Hole: 3.2},
 			}
 			link(&j, "crank").Bores = []job.Bore{rapid.SampledFrom(bores).Draw(t, "bore")}
 		}
