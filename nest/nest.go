@@ -49,5 +49,6 @@ type Layout struct {
 type Leftover struct {
 	Item   int
 	Copies int
+	Sheets int // sheets to add to the item's stock for all that found no room on it, not only this item; 0: not known
 	Why    string
 }

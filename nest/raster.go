@@ -3,6 +3,7 @@ package nest
 import (
 	"math"
 	"math/bits"
+	"slices"
 
 	"pinwright/parts/outline"
 )
@@ -21,102 +22,121 @@ func newBitmap(width, height int) bitmap {
 
 func (b bitmap) row(y int) []uint64 { return b.bits[y*b.stride : (y+1)*b.stride] }
 
-// fill sets the cells from a to b inclusive of a row.
+// fill sets the cells from a to b inclusive of a row; cells off the raster are left out.
 func (b bitmap) fill(y, from, to int) {
 	from, to = max(from, 0), min(to, b.width-1)
-	row := b.row(y)
-	for x := from; x <= to; x++ {
-		row[x>>6] |= 1 << (x & 63)
+	if y < 0 || y >= b.height || from > to {
+		return
 	}
+	row := b.row(y)
+	first, last := from>>6, to>>6
+	head, tail := ^uint64(0)<<(from&63), ^uint64(0)>>(63-to&63)
+	if first == last {
+		row[first] |= head & tail
+		return
+	}
+	row[first] |= head
+	for i := first + 1; i < last; i++ {
+		row[i] = ^uint64(0)
+	}
+	row[last] |= tail
 }
 
 // run is a stretch of set cells of one row, from and to inclusive.
 type run struct{ from, to int }
 
 // stamp is a shape as cells: every cell that the shape touches is set, so shapes whose cells are
-// apart are apart. Cell (0, 0) has its lower left corner at the origin of the shape's bounding box.
+// apart are apart. Cell (0, 0) has its lower left corner at the corner of the shape's box.
 type stamp struct {
 	width, height int
 	rows          [][]run
-	cells         int
-	low           outline.Point // lower left corner of the bounding box, in the turned shape's frame
+	probe         []int // all rows, in an order in which far apart ones come first
+	longest       int   // run, cells
 }
 
-// newStamp rasters regions; cell is the size of a cell, chord the error allowed in flattening.
-//
-// A cell is touched by a region if an edge of it runs through the cell, or if its middle is inside.
-func newStamp(rs []outline.Region, cell, chord float64) stamp {
-	box := outline.Bounds(rs)
-	s := stamp{
-		width:  int(math.Ceil(box.Width()/cell)) + 1,
-		height: int(math.Ceil(box.Height()/cell)) + 1,
-		low:    box.Min,
-	}
+// newStamp rasters rings with their box, of this width and height, at the origin.
+func newStamp(rings [][]outline.Point, width, height, cell float64) stamp {
+	s := stamp{width: cells(width, cell), height: cells(height, cell)}
 	b := newBitmap(s.width, s.height)
-	var rings [][]outline.Point
-	for _, r := range rs {
-		rings = append(rings, outline.Flatten(r.Outer, chord, outline.Around))
-		for _, h := range r.Holes {
-			// Around keeps a hole's outline within the polygon; the free room must be within the
-			// hole, so it is taken the other way round.
-			rings = append(rings, outline.Flatten(h, chord, outline.Within))
-		}
-	}
-	crossings := make([][]float64, s.height)
-	for _, ring := range rings {
-		for i, p := range ring {
-			q := ring[(i+1)%len(ring)]
-			edgeCells(b, p.Sub(box.Min).Scale(1/cell), q.Sub(box.Min).Scale(1/cell), crossings)
-		}
-	}
-	for y := range s.height {
-		xs := crossings[y]
-		sortFloats(xs)
-		for i := 0; i+1 < len(xs); i += 2 {
-			b.fill(y, int(math.Ceil(xs[i]-0.5)), int(math.Floor(xs[i+1]-0.5)))
-		}
-	}
+	var p painter
+	p.paint(b, rings, outline.Point{}, cell)
 	s.rows = make([][]run, s.height)
 	for y := range s.height {
 		s.rows[y] = runsOf(b.row(y), s.width)
 		for _, r := range s.rows[y] {
-			s.cells += r.to - r.from + 1
+			s.longest = max(s.longest, r.to-r.from+1)
+		}
+	}
+	for step := 1 << bits.Len(uint(s.height)); step > 0; step /= 2 {
+		for y := step - 1; y < s.height; y += 2 * step {
+			s.probe = append(s.probe, y)
 		}
 	}
 	return s
 }
 
-// edgeCells sets the cells that an edge touches and notes where it crosses the middle of rows.
-func edgeCells(b bitmap, p, q outline.Point, crossings [][]float64) {
-	if p.Y > q.Y {
-		p, q = q, p
+// touch is how far into a cell a shape must reach to take it, cells: what only touches a cell's side
+// leaves it free, rounding included.
+const touch = 1e-7
+
+// cells is the number of cells that a length from a cell's side takes, at least one.
+func cells(length, cell float64) int { return max(1, int(math.Ceil(length/cell-touch))) }
+
+// painter sets the cells that shapes touch. It keeps its scratch room.
+type painter struct{ crossings [][]float64 }
+
+// paint sets the cells that rings moved by at touch, and returns the first and last of the rows.
+//
+// A cell is touched if an edge runs through it, or if its middle is inside.
+func (p *painter) paint(b bitmap, rings [][]outline.Point, at outline.Point, cell float64) (low, high int) {
+	for len(p.crossings) < b.height {
+		p.crossings = append(p.crossings, nil)
+	}
+	low, high = b.height, -1
+	for _, ring := range rings {
+		for i, a := range ring {
+			c := ring[(i+1)%len(ring)]
+			from, to := p.edge(b, a.Add(at).Scale(1/cell), c.Add(at).Scale(1/cell))
+			low, high = min(low, from), max(high, to)
+		}
+	}
+	for y := max(low, 0); y <= min(high, b.height-1); y++ {
+		xs := p.crossings[y]
+		slices.Sort(xs)
+		for i := 0; i+1 < len(xs); i += 2 {
+			b.fill(y, int(math.Ceil(xs[i]-0.5)), int(math.Floor(xs[i+1]-0.5)))
+		}
+		p.crossings[y] = xs[:0]
+	}
+	return max(low, 0), min(high, b.height-1)
+}
+
+// edge sets the cells that an edge touches, notes where it crosses the middle of rows, and returns its
+// first and last row.
+func (p *painter) edge(b bitmap, a, c outline.Point) (low, high int) {
+	if a.Y > c.Y {
+		a, c = c, a
 	}
 	slope := 0.0
-	if q.Y > p.Y {
-		slope = (q.X - p.X) / (q.Y - p.Y)
+	if c.Y > a.Y {
+		slope = (c.X - a.X) / (c.Y - a.Y)
 	}
-	for y := max(0, int(math.Floor(p.Y))); y <= min(b.height-1, int(math.Floor(q.Y))); y++ {
-		from, to := p.X, q.X
-		if slope != 0 || q.Y > p.Y {
-			lo, up := math.Max(p.Y, float64(y)), math.Min(q.Y, float64(y+1))
-			from, to = p.X+(lo-p.Y)*slope, p.X+(up-p.Y)*slope
+	low = max(0, int(math.Floor(a.Y+touch)))
+	high = min(b.height-1, max(int(math.Ceil(c.Y-touch))-1, int(math.Floor(a.Y+touch))))
+	for y := low; y <= high; y++ {
+		from, to := a.X, c.X
+		if c.Y > a.Y {
+			from, to = a.X+(math.Max(a.Y, float64(y))-a.Y)*slope, a.X+(math.Min(c.Y, float64(y+1))-a.Y)*slope
 		}
 		if from > to {
 			from, to = to, from
 		}
-		b.fill(y, int(math.Floor(from-1e-9)), int(math.Floor(to+1e-9)))
-		if m := float64(y) + 0.5; p.Y <= m && m < q.Y {
-			crossings[y] = append(crossings[y], p.X+(m-p.Y)*slope)
+		b.fill(y, int(math.Floor(from+touch)), int(math.Ceil(to-touch))-1)
+		if m := float64(y) + 0.5; a.Y <= m && m < c.Y {
+			p.crossings[y] = append(p.crossings[y], a.X+(m-a.Y)*slope)
 		}
 	}
-}
-
-func sortFloats(xs []float64) {
-	for i := 1; i < len(xs); i++ {
-		for k := i; k > 0 && xs[k] < xs[k-1]; k-- {
-			xs[k], xs[k-1] = xs[k-1], xs[k]
-		}
-	}
+	return low, high
 }
 
 func runsOf(row []uint64, width int) []run {
@@ -135,43 +155,67 @@ func runsOf(row []uint64, width int) []run {
 	return out
 }
 
-// firstFree returns the lowest row from y0 on, and in it the first cell, at which the stamp hits no set
-// cell of the sheet; false if there is none. blocked and spread are scratch rows of the sheet's stride.
-func firstFree(sheet bitmap, s stamp, y0 int, blocked, spread []uint64) (x, y int, ok bool) {
-	last := sheet.width - s.width
-	if last < 0 {
-		return 0, 0, false
+// field is the cells of a sheet that are taken, ready to be asked for stretches: in level k the cell x
+// is set if one of the cells x to x+2^k-1 is taken. Whether a run of cells meets a taken one is then
+// the union of two levels' words, for all places in a row at once.
+type field struct {
+	levels []bitmap
+	top    int // rows from here on are free
+	paint  painter
+}
+
+func newField(width, height, longest int) field {
+	f := field{}
+	for range bits.Len(uint(longest)) {
+		f.levels = append(f.levels, newBitmap(width, height))
 	}
-	for y = y0; y+s.height <= sheet.height; y++ {
+	return f
+}
+
+// press takes the cells that rings moved by at touch.
+func (f *field) press(rings [][]outline.Point, at outline.Point, cell float64) {
+	low, high := f.paint.paint(f.levels[0], rings, at, cell)
+	for k := 1; k < len(f.levels); k++ {
+		for y := low; y <= high; y++ {
+			row := f.levels[k].row(y)
+			copy(row, f.levels[k-1].row(y))
+			orShiftDown(row, f.levels[k-1].row(y), 1<<(k-1))
+		}
+	}
+	f.top = max(f.top, high+1)
+}
+
+// firstFree returns the lowest row from y0 up to yLast, and in it the first cell up to xLast, at which
+// the stamp meets no taken cell; false if there is none. blocked is a scratch row.
+func (f *field) firstFree(s *stamp, y0, xLast, yLast int, blocked []uint64) (x, y int, ok bool) {
+	for y = y0; y <= yLast; y++ {
 		clear(blocked)
 		full := false
-		for r := 0; r < s.height && !full; r++ {
-			row := sheet.row(y + r)
-			if isZero(row) {
+		for i, r := range s.probe {
+			if y+r >= f.top {
 				continue
 			}
 			for _, run := range s.rows[r] {
-				orSpread(blocked, row, run, spread)
+				k := bits.Len(uint(run.to-run.from+1)) - 1
+				row := f.levels[k].row(y + r)
+				orShiftDown(blocked, row, run.from)
+				if rest := run.to - 1<<k + 1; rest > run.from {
+					orShiftDown(blocked, row, rest)
+				}
 			}
-			full = r&7 == 7 && firstZero(blocked, last) < 0
+			if i&3 == 3 && firstZero(blocked, xLast) < 0 {
+				full = true
+				break
+			}
 		}
 		if full {
 			continue
 		}
-		if x = firstZero(blocked, last); x >= 0 {
+		if x = firstZero(blocked, xLast); x >= 0 {
 			return x, y, true
 		}
 	}
 	return 0, 0, false
-}
-
-func isZero(row []uint64) bool {
-	for _, w := range row {
-		if w != 0 {
-			return false
-		}
-	}
-	return true
 }
 
 // firstZero returns the first clear bit up to last, or -1.
@@ -189,41 +233,23 @@ func firstZero(row []uint64, last int) int {
 	return -1
 }
 
-// orSpread sets blocked at every x for which row has a set cell between x+run.from and x+run.to. The
-// stretch is built up by doubling: the union of shifts over 2k is that over k and itself shifted by k.
-func orSpread(blocked, row []uint64, r run, spread []uint64) {
-	copy(spread, row)
-	length, have := r.to-r.from+1, 1
-	for have < length {
-		step := min(have, length-have)
-		orShiftDown(spread, spread, step)
-		have += step
-	}
-	orShiftDown(blocked, spread, r.from)
-}
-
-// orShiftDown sets dst |= src >> n, cell x taking cell x+n. dst may be src when n > 0: words are
-// written from the lowest up and read at or above the place written.
+// orShiftDown sets dst |= src >> n, cell x taking cell x+n.
 func orShiftDown(dst, src []uint64, n int) {
 	words, rest := n/64, uint(n%64)
-	for i := range dst {
-		k := i + words
-		if k >= len(src) {
-			return
-		}
-		v := src[k] >> rest
-		if rest > 0 && k+1 < len(src) {
-			v |= src[k+1] << (64 - rest)
-		}
-		dst[i] |= v
+	if words >= len(src) {
+		return
 	}
-}
-
-// press sets the cells of a stamp at (x, y).
-func (b bitmap) press(s stamp, x, y int) {
-	for r, runs := range s.rows {
-		for _, run := range runs {
-			b.fill(y+r, x+run.from, x+run.to)
+	src = src[words:]
+	if rest == 0 {
+		for i, w := range src {
+			dst[i] |= w
 		}
+		return
 	}
+	last := len(src) - 1
+	dst = dst[:len(src)]
+	for i := range last {
+		dst[i] |= src[i]>>rest | src[i+1]<<(64-rest)
+	}
+	dst[last] |= src[last] >> rest
 }
