@@ -5,6 +5,8 @@ import (
 	"fmt"
 	"math"
 	"slices"
+
+	"pinwright/parts/outline"
 )
 
 const (
@@ -109,20 +111,20 @@ func (it Item) fits(k Stock) error {
 	if len(turns(it, w, h)) > 0 {
 		return nil
 	}
-	hull := hullOf(it.Shape.Outer)
+	o := it.Shape.Outer
 	among, allowed := it.Angles, " in any allowed turn"
 	if among == nil {
-		among, allowed = []float64{roomiest(hull, w, h)}, " however it is turned"
+		among, allowed = []float64{roomiest(o, w, h)}, " however it is turned"
 	}
 	best := slices.MinFunc(among, func(a, b float64) int {
-		if over(hull, a, w, h) < over(hull, b, w, h) {
+		if over(o, a, w, h) < over(o, b, w, h) {
 			return -1
 		}
 		return 1
 	})
-	bw, bh := size(hull, best)
+	box := o.Transform(outline.Place(best, false, outline.Point{})).Bounds()
 	return fmt.Errorf("needs %.1f x %.1f mm%s, and a sheet of %s has %.1f x %.1f mm inside its margins, so it is %.1f mm too large: use a larger sheet, or split the part",
-		bw, bh, allowed, k.Name, w, h, over(hull, best, w, h))
+		box.Width(), box.Height(), allowed, k.Name, w, h, over(o, best, w, h))
 }
 
 // Bound is a number of sheets below which no layout can go, for each stock: the area of the parts over

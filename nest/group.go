@@ -55,7 +55,7 @@ func newGroup(items []Item, stock []Stock, kind int) *group {
 		if it.Stock == k.Name {
 			mine = append(mine, i)
 			_, w := narrowest(hullOf(it.Shape.Outer))
-			least = math.Min(least, w+between)
+			least = math.Min(least, w+between-0.2) // a little less, for the chords of the hull
 		}
 	}
 	long := math.Max(k.Width, k.Height)

@@ -20,14 +20,14 @@ const sameTurn = 1e-4
 // own frame; and the eighths between the first. If the shape fits in none of these, as a long bar that
 // only lies along the diagonal, the turn in which it has most room.
 func turns(it Item, w, h float64) []float64 {
-	hull := hullOf(it.Shape.Outer)
-	fits := func(a float64) bool { return over(hull, a, w, h) <= fitTolerance }
+	o := it.Shape.Outer
+	fits := func(a float64) bool { return over(o, a, w, h) <= fitTolerance }
 	if it.Angles != nil {
 		return slices.DeleteFunc(slices.Clone(it.Angles), func(a float64) bool { return !fits(a) })
 	}
 	m := it.Shape.Moments()
 	axis := -0.5 * math.Atan2(-2*m.Ixy, m.Ixx-m.Iyy)
-	narrow, _ := narrowest(hull)
+	narrow, _ := narrowest(hullOf(o))
 	var out []float64
 	for _, from := range []float64{narrow, axis, 0, narrow + math.Pi/4} {
 		for i := range 4 {
@@ -38,7 +38,7 @@ func turns(it Item, w, h float64) []float64 {
 		}
 	}
 	if len(out) == 0 {
-		if a := roomiest(hull, w, h); fits(a) {
+		if a := roomiest(o, w, h); fits(a) {
 			out = append(out, a)
 		}
 	}
@@ -48,10 +48,10 @@ func turns(it Item, w, h float64) []float64 {
 // fitTolerance is by how much a shape may seem too large for a sheet through rounding, mm.
 const fitTolerance = 1e-9
 
-// hullOf returns the corners of the convex hull of an outline, counter-clockwise; arcs are followed
-// from outside to a thousandth of a millimetre, so that a fit by the hull is a fit.
+// hullOf returns the corners of the convex hull of an outline, counter-clockwise, its arcs by chords that
+// are off by a twentieth of a millimetre.
 func hullOf(o outline.Outline) []outline.Point {
-	pts := outline.Flatten(o, 1e-3, outline.Around)
+	pts := outline.Flatten(o, 0.05, outline.Inscribed)
 	discs := make([]outline.Disc, len(pts))
 	for i, p := range pts {
 		discs[i].Centre = p
@@ -64,43 +64,37 @@ func hullOf(o outline.Outline) []outline.Point {
 	return out
 }
 
-// size returns width and height of the box about the points turned by a.
-func size(pts []outline.Point, a float64) (w, h float64) {
-	t := outline.Place(a, false, outline.Point{})
-	box := outline.EmptyBox()
-	for _, p := range pts {
-		box = box.Union(outline.BoxOf(t.Apply(p)))
-	}
-	return box.Width(), box.Height()
+// over is by how much an outline turned by a is too large for w by h, mm; negative if there is room.
+func over(o outline.Outline, a, w, h float64) float64 {
+	box := o.Transform(outline.Place(a, false, outline.Point{})).Bounds()
+	return math.Max(box.Width()-w, box.Height()-h)
 }
 
-// over is by how much the points turned by a are too large for w by h; negative if there is room.
-func over(pts []outline.Point, a, w, h float64) float64 {
-	bw, bh := size(pts, a)
-	return math.Max(bw-w, bh-h)
-}
-
-// narrowest returns the turn that makes the box about a hull least high, and that height: the least
+// narrowest returns the turn that makes the box about a hull least high, and that height, mm: the least
 // width of a convex polygon is square to one of its edges.
 func narrowest(hull []outline.Point) (turn, width float64) {
 	width = math.Inf(1)
 	for i, p := range hull {
-		a := -hull[(i+1)%len(hull)].Sub(p).Angle()
+		along := hull[(i+1)%len(hull)].Sub(p).Unit()
+		high := 0.0
+		for _, q := range hull {
+			high = math.Max(high, along.Cross(q.Sub(p)))
+		}
 		// The margin keeps the first of edges that are equal but for rounding.
-		if _, h := size(hull, a); h < width-1e-7 {
-			turn, width = a, h
+		if high < width-1e-7 {
+			turn, width = -along.Angle(), high
 		}
 	}
 	return turn, width
 }
 
-// roomiest returns the turn for which a hull exceeds w by h least (over): the best of 720 turns, then
+// roomiest returns the turn for which an outline exceeds w by h least (over): the best of 720 turns, then
 // finer steps about it until they are below a billionth of a turn.
-func roomiest(hull []outline.Point, w, h float64) float64 {
+func roomiest(o outline.Outline, w, h float64) float64 {
 	best, least := 0.0, math.Inf(1)
 	try := func(a float64) {
-		if o := over(hull, a, w, h); o < least-1e-12 {
-			best, least = a, o
+		if x := over(o, a, w, h); x < least-1e-12 {
+			best, least = a, x
 		}
 	}
 	for i := range 720 {
