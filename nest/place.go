@@ -81,7 +81,7 @@ func Nest(ctx context.Context, items []Item, stock []Stock, o Options) (Layout, 
 		}
 	}
 	if slices.ContainsFunc(best, func(t trial) bool { return t.undone > 0 }) {
-		return l, fmt.Errorf("nest: interrupted before every part had its place: %w", context.Cause(ctx))
+		return l, fmt.Errorf("nest: interrupted before every part had its place: %w", ctx.Err())
 	}
 	return l, nil
 }
@@ -89,7 +89,7 @@ func Nest(ctx context.Context, items []Item, stock []Stock, o Options) (Layout, 
 // withoutSlides places a trial's order again, on the raster alone.
 func (g *group) withoutSlides(ctx context.Context, t trial) trial {
 	again := trial{order: t.order, rule: t.rule, raster: true}
-	g.place(ctx, &again)
+	g.place(context.WithoutCancel(ctx), &again)
 	return again
 }
 
