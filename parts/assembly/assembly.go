@@ -40,7 +40,7 @@ const (
 // Gap is the smallest distance between two bodies that share a height, over the whole motion.
 type Gap struct {
 	A, B     string    // "coupler", "nut of A"
-	MM       float64   // smallest distance; negative: they overlap, by about so much
+	MM       float64   // smallest distance; negative: they overlap, by so much
 	Error    float64   // the true smallest distance is at most so much less than MM
 	Angle    float64   // drive angle where it occurs
 	Settings []float64 // places of the adjustable pivots where it occurs, 0 to 1, in the order of the joints
@@ -57,7 +57,8 @@ type thing struct {
 }
 
 // Gaps returns the smallest gaps of all pairs of bodies that come nearer than some millimetres to each
-// other, in the order of the smallest first.
+// other, in the order of the smallest first. Of pairs that touch the gap is minus the depth of their
+// overlap, see interference.Options.
 //
 // list and kits are those of one copy that is not mirrored; a mirrored copy moves as its mirror image
 // and has the same gaps. It errs when the motion cannot be certified, as with surplus links.
@@ -67,24 +68,28 @@ func Gaps(j job.Job, m *linkage.Mechanism, list []parts.Part, kits []stack.Kit, 
 		return nil, err
 	}
 	things := append(ofParts(j, list, levels), ofKits(kits)...)
-	var out []Gap
+	var pairs [][2]interference.Body
 	for i, a := range things {
 		for _, b := range things[i+1:] {
-			if !meet(m.Linkage(), a, b) {
-				continue
+			if meet(m.Linkage(), a, b) {
+				pairs = append(pairs, [2]interference.Body{a.Body, b.Body})
 			}
-			g, err := space.Smallest(a.Body, b.Body, interference.Options{Accuracy: accuracy, Share: share, Limit: interest, Boxes: effort})
-			if err != nil {
-				return nil, err
-			}
-			if g.MM >= interest {
-				continue
-			}
-			out = append(out, Gap{
-				A: a.Name, B: b.Name, MM: g.MM, Error: g.Error, Angle: g.Angle, Settings: g.Settings, At: g.At,
-				Low: math.Max(a.Low, b.Low), Up: math.Min(a.Up, b.Up),
-			})
 		}
+	}
+	gaps, err := space.All(pairs, interference.Options{Accuracy: accuracy, Share: share, Limit: interest, Boxes: effort, Depth: true})
+	if err != nil {
+		return nil, err
+	}
+	var out []Gap
+	for i, g := range gaps {
+		if g.MM >= interest {
+			continue
+		}
+		a, b := pairs[i][0], pairs[i][1]
+		out = append(out, Gap{
+			A: a.Name, B: b.Name, MM: g.MM, Error: g.Error, Angle: g.Angle, Settings: g.Settings, At: g.At,
+			Low: math.Max(a.Low, b.Low), Up: math.Min(a.Up, b.Up),
+		})
 	}
 	slices.SortStableFunc(out, func(a, b Gap) int {
 		switch {
