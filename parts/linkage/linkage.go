@@ -5,7 +5,7 @@
 //
 // New checks a Linkage, takes it apart into Assur groups and puts it together at the start of its
 // drive; Mechanism.Cycle solves it over the drive, for one setting of its adjustable pivots; a Cycle
-// gives places, speeds, placements of links, bounds between positions, paths, transmission angles,
+// gives places, speeds, placements of links, paths, transmission angles,
 // toggles and sensitivities. Analyse does all of that once and returns a Report. Recover finds
 // lengths in a table of joint places.
 package linkage
