@@ -108,7 +108,7 @@ func (it Item) faults(stock []Stock) (out []error) {
 // fits says by how much an item is too large for a sheet in all its allowed turns, if it is.
 func (it Item) fits(k Stock) error {
 	w, h := k.free()
-	if len(turns(it, w, h)) > 0 {
+	if len(turns(it, w, h)) > 0 || (it.Flip && len(turns(it.flipped(), w, h)) > 0) {
 		return nil
 	}
 	o := it.Shape.Outer
@@ -125,6 +125,12 @@ func (it Item) fits(k Stock) error {
 	box := o.Transform(outline.Place(best, false, outline.Point{})).Bounds()
 	return fmt.Errorf("needs %.1f x %.1f mm%s, and a sheet of %s has %.1f x %.1f mm inside its margins, so it is %.1f mm too large: use a larger sheet, or split the part",
 		box.Width(), box.Height(), allowed, k.Name, w, h, over(o, best, w, h))
+}
+
+// flipped is the item turned over.
+func (it Item) flipped() Item {
+	it.Shape = it.Shape.Transform(outline.Place(0, true, outline.Point{}))
+	return it
 }
 
 // Bound is a number of sheets below which no layout can go, for each stock: the area of the parts over

@@ -79,15 +79,13 @@ func (g *group) newShape(it Item, between, least float64) shape {
 	rs := grown(it.Shape, between, least)
 	s := shape{first: g.forms}
 	w, h := g.stock.free()
-	// A part that only fits turned over by a hair for rounding is refused by check, so that there is
-	// always a form.
 	for _, mirror := range []bool{false, true} {
 		if mirror && !it.Flip {
 			break
 		}
 		in := it
 		if mirror {
-			in.Shape = it.Shape.Transform(outline.Place(0, true, outline.Point{}))
+			in = it.flipped()
 		}
 		for _, a := range turns(in, w, h) {
 			f := newForm(rs, outline.Place(a, mirror, outline.Point{}), g.stock, g.cell)
@@ -100,7 +98,9 @@ func (g *group) newShape(it Item, between, least float64) shape {
 	g.forms += len(s.forms)
 	_, width := narrowest(hullOf(it.Shape.Outer))
 	box := it.Shape.Outer.Bounds()
-	s.sizes = [sizes]float64{byLength: math.Hypot(box.Width(), box.Height()), byArea: it.Shape.Outer.Area(), byWidth: width}
+	s.sizes = [sizes]float64{
+		byLength: rounded(math.Hypot(box.Width(), box.Height())), byArea: rounded(it.Shape.Outer.Area()), byWidth: rounded(width),
+	}
 	return s
 }
 

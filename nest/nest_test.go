@@ -209,6 +209,21 @@ func TestExactFits(t *testing.T) {
 	}
 }
 
+// A tilted plate that lies straight only when it is turned over: mirroring changes the sign of its tilt.
+func TestFitsTurnedOver(t *testing.T) {
+	tilted := outline.Rectangle(pt(0, 0), pt(90, 40)).Transform(outline.Place(0.3, false, pt(9, 9)))
+	items := []Item{{Name: "plate", Stock: "s", Quantity: 1, Shape: region(tilted), Angles: []float64{0.3}, Flip: true}}
+	stock := []Stock{{Name: "s", Width: 100, Height: 50, Quantity: 1, Margin: 5}}
+	l, err := Nest(context.Background(), items, stock, Options{})
+	if err != nil || len(l.Placements) != 1 || !l.Placements[0].At.Mirror {
+		t.Errorf("%+v, %v", l, err)
+	}
+	items[0].Flip = false
+	if _, err := Nest(context.Background(), items, stock, Options{}); err == nil {
+		t.Error("lies on the sheet without being turned over")
+	}
+}
+
 // Where web and kerf are nothing, parts may touch and not overlap.
 func TestTouchingWithoutWeb(t *testing.T) {
 	items := []Item{{Name: "tile", Stock: "s", Quantity: 6, Shape: region(outline.Rectangle(pt(0, 0), pt(33.3, 50))), Angles: []float64{0, math.Pi}}}
@@ -371,7 +386,7 @@ func TestInterruptedAnywhere(t *testing.T) {
 		items, stock := drawItems(t)
 		var asked atomic.Int64
 		asked.Store(int64(rapid.IntRange(0, 200).Draw(t, "after")))
-		l, err := Nest(countdown{context.Background(), &asked}, items, stock, Options{Effort: 8})
+		l, err := Nest(countdown{context.Background(), &asked}, items, stock, Options{Effort: 2})
 		if err != nil && !errors.Is(err, context.Canceled) {
 			t.Fatal(err)
 		}

@@ -9,7 +9,7 @@ import (
 
 // Options says how hard to try.
 type Options struct {
-	Effort   int    // batches of four layouts that are tried for every stock; 0 and 1: one
+	Effort   int    // batches of nine layouts that are tried for every stock; 0 and 1: one
 	Seed     uint64 // of the orders that are drawn
 	Progress func(Progress)
 }
@@ -34,6 +34,7 @@ type Progress struct {
 //     chooses between the turns (table.go). Windows of large parts are room like any other.
 //  4. Orders and rules are tried, more with more effort (search.go). The best layout is that with the
 //     fewest sheets, and of these that with the shortest use of the last one: its remnant is one piece.
+//     Stocks have nothing to do with each other and are searched one after the other.
 //  5. The layout is verified exactly, on lines and arcs (Verify). Should a slide have gone wrong, the
 //     layout is made again from the raster alone.
 //

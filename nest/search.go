@@ -4,8 +4,10 @@ import (
 	"cmp"
 	"context"
 	"math/rand/v2"
+	"runtime"
 	"slices"
 	"sync"
+	"sync/atomic"
 )
 
 // trial is an order of placing with a rule, and what came of it.
@@ -31,33 +33,28 @@ func (a value) compare(b value) int {
 	return cmp.Or(cmp.Compare(a.undone, b.undone), cmp.Compare(a.sheets, b.sheets), cmp.Compare(a.over, b.over), cmp.Compare(a.reach, b.reach))
 }
 
-// batch is the number of orders tried side by side. It is part of the search and not a number of cores: the
-// best of a batch is what the next one starts from.
-const batch = 4
+// batch is the number of orders tried side by side: the first batch is every measure with every rule. It is
+// part of the search and not a number of cores, for the best of a batch is what the next one starts from.
+const batch = sizes * int(rules)
 
 // search tries orders, batch after batch, and returns the best; say is told after each batch, and may
 // be nil.
 //
-// Plan: the first batches sort the pieces by decreasing length, area and width and use all rules. From then on
-// each batch changes the best order so far in four ways, drawn from the seed: some pieces, usually of one
-// shape, move elsewhere. The best of the four is kept if it is no worse.
+// Plan: the first batch sorts the pieces by decreasing length, area and width and uses all rules. From then
+// on each changes the best order so far in as many ways, drawn from the seed: some pieces, usually of one
+// shape, move elsewhere. The best of the batch is kept if it is no worse.
 func (g *group) search(ctx context.Context, batches int, seed uint64, say func(best trial)) trial {
 	var best trial
 	for b := range batches {
 		tries := make([]trial, batch)
 		for i := range tries {
-			n := b*batch + i
-			if n < sizes*int(rules) {
-				tries[i] = g.sorted(n)
+			if b == 0 {
+				tries[i] = g.sorted(i)
 			} else {
-				tries[i] = g.changed(best, rand.New(rand.NewPCG(seed, uint64(n)))) //nolint:gosec // a seeded search, not a secret
+				tries[i] = g.changed(best, rand.New(rand.NewPCG(seed, uint64(b*batch+i)))) //nolint:gosec // a seeded search, not a secret
 			}
 		}
-		var wait sync.WaitGroup
-		for i := range tries {
-			wait.Go(func() { g.place(ctx, &tries[i]) })
-		}
-		wait.Wait()
+		g.placeAll(ctx, tries)
 		pick := slices.MinFunc(tries, func(a, b trial) int { return a.value.compare(b.value) })
 		if b == 0 || pick.value.compare(best.value) <= 0 {
 			best = pick
@@ -70,6 +67,21 @@ func (g *group) search(ctx context.Context, batches int, seed uint64, say func(b
 		}
 	}
 	return best
+}
+
+// placeAll lays all trials, as many at once as there are cores and the first ones first, so that an
+// interruption finds one that is complete.
+func (g *group) placeAll(ctx context.Context, tries []trial) {
+	var wait sync.WaitGroup
+	var next atomic.Int64
+	for range min(len(tries), runtime.GOMAXPROCS(0)) {
+		wait.Go(func() {
+			for i := next.Add(1) - 1; int(i) < len(tries); i = next.Add(1) - 1 {
+				g.place(ctx, &tries[i])
+			}
+		})
+	}
+	wait.Wait()
 }
 
 // sorted returns the n-th of the first trials: every measure with every rule.

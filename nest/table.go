@@ -31,6 +31,13 @@ const dead = math.MaxInt
 // be up to two more than it needs, one for each side; it is slid before it is judged.
 const slack = 2
 
+// noise is what values may differ by through rounding, which is not the same on all processors, mm: no choice
+// hangs on it.
+const noise = 1e-6
+
+// rounded takes the noise away.
+func rounded(v float64) float64 { return math.Round(v/noise) * noise }
+
 // lost is the length of part of a cell that is free all the same, cells.
 const lost = 1e-6
 
@@ -81,7 +88,7 @@ func (t *table) drop(s *shape, r rule) (put, bool) {
 		f, id := &s.forms[i], s.first+i
 		for t.from[id] != dead {
 			// The slide gains two cells at most by rule of thumb; a wrong guess costs a better place, no overlap.
-			if low := float64(t.from[id]-slack) * t.cell; r.value(f, outline.Point{Y: low}) >= value {
+			if low := float64(t.from[id]-slack) * t.cell; r.value(f, outline.Point{Y: low}) >= value-noise {
 				break
 			}
 			xLast, yLast := t.last(f, t.strict[id])
@@ -96,7 +103,7 @@ func (t *table) drop(s *shape, r rule) (put, bool) {
 				t.strict[id] = true
 				continue
 			}
-			if v := r.value(f, p); v < value {
+			if v := r.value(f, p); v < value-noise {
 				best, value = put{form: f, at: p}, v
 			}
 			break
@@ -132,5 +139,5 @@ func (t *table) reach() (far float64) {
 	for _, p := range t.placed {
 		far = math.Max(far, p.at.Y+p.form.inner.Max.Y)
 	}
-	return far
+	return rounded(far)
 }
