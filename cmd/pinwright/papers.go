@@ -3,120 +3,14 @@ package main
 import (
 	"bytes"
 	"fmt"
-	"slices"
 	"strconv"
 	"strings"
 
 	"pinwright/export/files"
 	"pinwright/export/pdf"
 	"pinwright/export/picture"
-	"pinwright/export/svg"
 	"pinwright/kerf"
-	"pinwright/parts/material"
-	"pinwright/parts/stack"
 )
-
-// cautions are what must be read before the laser is switched on and before the thing moves.
-func (p plan) cautions() []string {
-	out := []string{
-		"The beam can blind and burn, and the material can catch fire: follow the laser's manual, local codes and the people in charge of it. Wear the eye protection they name, keep lids and interlocks closed, stay with the laser while it works and have the right extinguisher at hand.",
-		"Cutting gives off fumes: cut only with extraction running. Cut only material that you know; chlorinated plastics such as PVC must never go in.",
-		"A moving linkage pinches and shears: keep fingers away, guard it where others can reach it, and switch the drive off before you touch it.",
-		"Sizes and strengths here are for models and prototypes, not for anything that carries people or that can hurt someone when it fails; ask a qualified person there.",
-	}
-	for _, s := range p.job.Stock {
-		m, err := material.Lookup(s.Material)
-		if err != nil {
-			continue
-		}
-		for _, c := range m.Cautions {
-			if line := m.Name + ": " + c; !slices.Contains(out, line) {
-				out = append(out, line)
-			}
-		}
-		if m.Note != "" {
-			if line := s.Name + ": " + m.Note; !slices.Contains(out, line) {
-				out = append(out, line)
-			}
-		}
-	}
-	return out
-}
-
-// pictureWidth is the width of the pictures that go beside the cut files, mm.
-const pictureWidth = 180
-
-// pictures draws the first sheet of every stock and the pins of one copy, as files.
-func (p plan) pictures() ([]files.File, error) {
-	var out []files.File
-	add := func(name string, pic picture.Picture, err error) error {
-		if err != nil {
-			return err
-		}
-		var b bytes.Buffer
-		if err := svg.WritePicture(&b, pic); err != nil {
-			return err
-		}
-		out = append(out, files.File{Name: name, Data: b.Bytes()})
-		return nil
-	}
-	for _, s := range p.sheets {
-		pic, err := picture.Layout(s, pictureWidth, 1000)
-		if err := add("pictures/"+s.Name+".svg", pic, err); err != nil {
-			return nil, err
-		}
-	}
-	pic, err := picture.SideView(p.sideKits(), p.sideLevels(), pictureWidth, 1000)
-	return out, add("pictures/side.svg", pic, err)
-}
-
-// sideKits are the kits of the first copy as pieces to be drawn; all copies carry the same.
-func (p plan) sideKits() []picture.Kit {
-	var out []picture.Kit
-	for _, k := range p.kits {
-		if k.Copy != p.job.Copies[0].Name {
-			continue
-		}
-		kit := picture.Kit{Name: k.Joint, Text: k.Through.Designation}
-		kit.Pieces = append(kit.Pieces, picture.Piece{
-			Kind: picture.ShankPiece, From: k.Through.From, To: k.Through.To, Outer: k.Through.Diameter,
-		})
-		for _, e := range k.Elements {
-			kit.Pieces = append(kit.Pieces, pieceOf(e, k.Through.Diameter))
-		}
-		out = append(out, kit)
-	}
-	return out
-}
-
-// pieceOf draws an element of a kit. Parts are drawn as wide as four times the pin.
-func pieceOf(e stack.Element, pin float64) picture.Piece {
-	piece := picture.Piece{Name: e.What, From: e.From, To: e.To, Outer: e.Diameter, Inner: pin}
-	switch e.Kind {
-	case stack.HeadElement:
-		piece.Kind, piece.Inner = picture.HeadPiece, 0
-		piece.Name = ""
-	case stack.NutElement:
-		piece.Kind = picture.NutPiece
-	case stack.WasherElement:
-		piece.Kind = picture.WasherPiece
-	case stack.SpacerElement, stack.CollarElement:
-		piece.Kind = picture.SpacerPiece
-	case stack.BearingElement:
-		piece.Kind = picture.SeatPiece
-	default:
-		piece.Kind, piece.Name, piece.Outer = picture.PartPiece, e.Part, 4*pin
-	}
-	return piece
-}
-
-func (p plan) sideLevels() []picture.Level {
-	var out []picture.Level
-	for _, l := range p.levels {
-		out = append(out, picture.Level{Name: "plane " + strconv.Itoa(l.Plane), From: l.From, To: l.To})
-	}
-	return out
-}
 
 // papers is what goes to the workshop on paper.
 func (p plan) papers(format pdf.Format) (files.File, error) {
@@ -128,9 +22,10 @@ func (p plan) papers(format pdf.Format) (files.File, error) {
 	add := func(b ...pdf.Block) { doc.Blocks = append(doc.Blocks, b...) }
 	add(pdf.Text(p.summary()), pdf.Cautions(p.cautions()))
 	width, height := format.Room()
+	_, below := format.Below(0)
 	add(pdf.Heading("Sheets"))
 	for i, s := range p.sheets {
-		pic, err := picture.Layout(s, width, height)
+		pic, err := picture.Layout(s, width, below)
 		if err != nil {
 			return files.File{}, err
 		}
@@ -138,15 +33,40 @@ func (p plan) papers(format pdf.Format) (files.File, error) {
 	}
 	add(pdf.Heading("Holes"), pdf.Text("Finished diameters, and what is drawn: the path of the beam's middle, kerf taken off."), p.holeTable())
 	add(pdf.Heading("Hardware"), p.hardwareTable())
-	add(pdf.Heading("What each pin carries"))
-	pics, err := picture.SideViews(p.sideKits(), p.sideLevels(), width, height)
+	scene := p.scene()
+	front, err := picture.FrontView(scene, width, below)
 	if err != nil {
 		return files.File{}, err
 	}
-	for _, pic := range pics {
-		add(pdf.Drawing{Picture: pic, Caption: pic.Title})
+	planes, err := picture.Planes(scene, width, height)
+	if err != nil {
+		return files.File{}, err
 	}
-	add(p.kitNotes()...)
+	add(pdf.Heading("What lies where"))
+	add(pdf.Drawing{Picture: front, Caption: p.pose() + " The highest plane is nearest; joints of the frame are filled."})
+	add(pdf.Drawing{Picture: planes, Caption: "Each plane with its parts, the others in grey; heights are those of the side view. " + p.pose()})
+	order, err := p.assembling()
+	if err != nil {
+		return files.File{}, err
+	}
+	kits := p.sideKits(order)
+	_, below = format.Below(sideKeyLines)
+	sides, err := picture.SideViews(kits, p.sideLevels(), width, below)
+	if err != nil {
+		return files.File{}, err
+	}
+	add(pdf.Heading("What each pin carries"), pdf.Text(sideKey))
+	for _, pic := range sides {
+		add(pdf.Drawing{Picture: pic, Caption: pic.Title + "."})
+	}
+	apart, err := picture.Exploded(p.explodedKits(order), width, height)
+	if err != nil {
+		return files.File{}, err
+	}
+	add(pdf.Heading("Putting it together"), pdf.Text(p.assemblyIntro()), assemblyTable(order))
+	for _, pic := range apart {
+		add(pdf.Drawing{Picture: pic, Caption: "Numbers are those of the steps. " + pic.Title + "."})
+	}
 	var b bytes.Buffer
 	if err := pdf.WritePapers(&b, doc); err != nil {
 		return files.File{}, err
@@ -221,18 +141,4 @@ func (p plan) hardwareTable() pdf.Table {
 		})
 	}
 	return t
-}
-
-// kitNotes are the sentences that go with the pins, each once.
-func (p plan) kitNotes() []pdf.Block {
-	var out []pdf.Block
-	for _, k := range p.kits {
-		if k.Copy != p.job.Copies[0].Name {
-			continue
-		}
-		for _, n := range k.Notes {
-			out = append(out, pdf.Text(k.Joint+": "+n))
-		}
-	}
-	return out
 }

@@ -17,6 +17,7 @@ const (
 	marginTop   = 16
 	marginFoot  = 18
 	captionRoom = 10
+	headingRoom = sizeHeading*lead + 2
 
 	sizeTitle   = 6.4
 	sizeHeading = 4.4
@@ -106,6 +107,23 @@ func (f *flow) block(b Block, next float64) error {
 		return fmt.Errorf("%T is not a block", b)
 	}
 	return nil
+}
+
+// next returns the room that the blocks after a heading need on its page: texts whole, then the beginning
+// of what they are about.
+func (f *flow) next(blocks []Block) float64 {
+	room := 0.0
+	for _, b := range blocks {
+		t, ok := b.(Text)
+		if !ok {
+			return room + f.least(b)
+		}
+		room += float64(len(f.wrap(f.fonts.regular, string(t), sizeBody, f.width-2*marginSide)))*sizeBody*lead + 1.5
+		if room > f.height/2 {
+			break
+		}
+	}
+	return room
 }
 
 // least returns the room that a block needs on the page where it begins.

@@ -81,6 +81,17 @@ func (f Format) Room() (width, height float64) {
 	return width - 2*marginSide, height - marginTop - marginFoot - captionRoom
 }
 
+// Below returns the same for a picture that stands below a heading and so many lines of text as wide as
+// the page.
+func (f Format) Below(lines int) (width, height float64) {
+	width, height = f.Room()
+	height -= headingRoom
+	if lines > 0 {
+		height -= float64(lines)*sizeBody*lead + 1.5
+	}
+	return width, height
+}
+
 // WritePapers writes the papers as a document with its fonts inside.
 func WritePapers(w io.Writer, p Papers) error {
 	f, err := newFlow(p.Format)
@@ -92,11 +103,7 @@ func WritePapers(w io.Writer, p Papers) error {
 		f.space(2)
 	}
 	for i, b := range p.Blocks {
-		next := 0.0
-		if i+1 < len(p.Blocks) {
-			next = f.least(p.Blocks[i+1])
-		}
-		if err := f.block(b, next); err != nil {
+		if err := f.block(b, f.next(p.Blocks[i+1:])); err != nil {
 			return fmt.Errorf("pdf: block %d: %w", i+1, err)
 		}
 	}

@@ -116,6 +116,9 @@ func dashOf(op export.Operation) []float64 {
 }
 
 func (p *Picture) label(x, y float64, text string, size float64, anchor Anchor, bold bool) {
+	if text == "" {
+		return
+	}
 	p.Items = append(p.Items, Label{At: outline.Point{X: x, Y: y}, Text: text, Size: size, Anchor: anchor, Bold: bold, Colour: ink})
 }
 
@@ -163,9 +166,6 @@ func legendOf(parts []piece, width, size float64) names {
 	rows := max(1, (len(parts)+columns-1)/columns)
 	return names{rows: rows, column: width / float64(columns)}
 }
-
-// roughWidth is about how long a text is; fonts differ, so it is on the long side.
-func roughWidth(s string, size float64) float64 { return 0.56 * size * float64(len([]rune(s))) }
 
 // roomiest returns a point of the material within o that is far from every cut and mark of the part, and how
 // far: the best of a grid, refined twice round the best.

@@ -62,6 +62,10 @@ var (
 	ink  = export.RGB{R: 0x22, G: 0x22, B: 0x22}
 	grey = export.RGB{R: 0x8a, G: 0x8a, B: 0x8a}
 	pale = export.RGB{R: 0xf3, G: 0xf3, B: 0xf0}
+
+	faint  = export.RGB{R: 0xcc, G: 0xcc, B: 0xcc}
+	accent = export.RGB{R: 0xb0, G: 0x30, B: 0x30}
+	white  = export.RGB{R: 0xff, G: 0xff, B: 0xff}
 )
 
 // tint returns the colour of the i-th thing of a row: eight tints, light enough for ink on them, that

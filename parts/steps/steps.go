@@ -26,6 +26,7 @@ type Part struct {
 	Mark   string   // engraved on it
 	Height float64  // of its lower face, mm: the lower of two free parts goes on first
 	After  []string // names of parts that must be there before, besides those under it on its pins
+	How    string   // a sentence on what the pins do not tell: tabs that go into slots; may be empty
 }
 
 // Pin is what one joint carries, from bottom to top.
@@ -49,7 +50,8 @@ func (i Item) part() bool { return i.Part != "" && !i.Seat }
 // Deed is what is done on one pin in one step.
 type Deed struct {
 	Joint string
-	Press []int // items that are pressed into the part, as indices of the pin's Items, ascending
+	Part  int   // the item that the part is, as an index of the pin's Items
+	Press []int // items that are pressed into the part, likewise, ascending
 	Under []int // that go on the pin under the part
 	Begin bool  // the bolt or shaft goes up through the part, the items under it already on
 	Over  []int // that close the pin over the part
@@ -63,6 +65,7 @@ type Step struct {
 	Number int // from 1
 	Part   string
 	Mark   string
+	How    string
 	Deeds  []Deed // one for every pin that the part is on, in the order of the pins
 }
 
@@ -164,13 +167,13 @@ func circle(parts []Part, done []bool) error {
 
 // step collects what is done when a part goes on.
 func step(number int, part Part, pins []Pin) Step {
-	s := Step{Number: number, Part: part.Name, Mark: part.Mark}
+	s := Step{Number: number, Part: part.Name, Mark: part.Mark, How: part.How}
 	for _, pin := range pins {
 		at := slices.IndexFunc(pin.Items, func(i Item) bool { return i.part() && i.Part == part.Name })
 		if at < 0 {
 			continue
 		}
-		d := Deed{Joint: pin.Joint, Begin: true, Close: true, pin: pin}
+		d := Deed{Joint: pin.Joint, Part: at, Begin: true, Close: true, pin: pin}
 		for i := at - 1; i >= 0; i-- {
 			if pin.Items[i].part() {
 				d.Begin = false

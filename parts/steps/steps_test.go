@@ -27,11 +27,11 @@ func ExampleOrder() {
 		panic(err)
 	}
 	for _, s := range order {
-		fmt.Printf("Step %d: %s\n", s.Number, strings.Join(s.Words(), " "))
+		fmt.Printf("Step %d, %s: %s\n", s.Number, s.Takes(), strings.Join(s.Words(), " "))
 	}
 	// Output:
-	// Step 1: Take LEFT-1 CRANK 0°. A: put washer ISO 7089 4 on ISO 4762 M4x16 and push it up through the part.
-	// Step 2: Take LEFT-1 COUPLER. Put it on A over washer ISO 7089 4. A: close with washer ISO 7089 4 and nut DIN 985 M4. A: Leave 0.2 mm of play.
+	// Step 1, LEFT-1 CRANK 0°: A: put washer ISO 7089 4 on ISO 4762 M4x16 and push it up through the part.
+	// Step 2, LEFT-1 COUPLER: Put it on A over washer ISO 7089 4. A: close with washer ISO 7089 4 and nut DIN 985 M4. A: Leave 0.2 mm of play.
 }
 
 // Every item of every pin is in exactly one step, every part in one, and a part comes after everything
@@ -68,6 +68,9 @@ func TestEveryItemOnce(t *testing.T) {
 					}
 				}
 				at := slices.IndexFunc(pins[i].Items, func(item steps.Item) bool { return item.Part == s.Part && !item.Seat })
+				if at != d.Part {
+					t.Fatalf("step %d, joint %s: part is item %d, not %d", s.Number, d.Joint, d.Part, at)
+				}
 				count[i][at]++
 				for k, item := range pins[i].Items {
 					// What is below is there by now; what is above is only there if it closes the pin or sits in the part.
@@ -188,8 +191,8 @@ func TestNumberedMark(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	want := "Take P7 (left-1.toe). B: press bearing 624 into it. B: push ISO 4762 M4x20 up through the part."
-	if got := strings.Join(order[0].Words(), " "); got != want {
+	want := "P7 (left-1.toe): B: press bearing 624 into it. B: push ISO 4762 M4x20 up through the part."
+	if got := order[0].Takes() + ": " + strings.Join(order[0].Words(), " "); got != want {
 		t.Errorf("got  %s\nwant %s", got, want)
 	}
 }

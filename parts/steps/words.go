@@ -5,8 +5,8 @@ import (
 	"strings"
 )
 
-// Words tells the step to the person who does it: the first sentence names the part, then comes a
-// sentence for every pin in the order in which the hands need them.
+// Words tells what is done with the part, a sentence for every pin in the order in which the hands need
+// them: what is pressed in and the bolts that go through it, then where it goes, then what closes pins.
 func (s Step) Words() []string {
 	var before, after []string
 	var on []string
@@ -23,23 +23,26 @@ func (s Step) Words() []string {
 			after = append(after, d.close()...)
 		}
 	}
-	out := append([]string{s.named() + "."}, before...)
+	out := before
 	if len(on) > 0 {
 		out = append(out, "Put it on "+enumerate(on)+".")
+	}
+	if s.How != "" {
+		out = append(out, s.How)
 	}
 	return append(out, after...)
 }
 
-// named is the mark, with the name where the mark does not tell it.
-func (s Step) named() string {
+// Takes is the part by its mark, with its name where the mark does not tell it.
+func (s Step) Takes() string {
 	plain := strings.ToUpper(strings.ReplaceAll(s.Part, ".", " "))
 	switch {
 	case s.Mark == "":
-		return "Take " + s.Part
+		return s.Part
 	case strings.HasPrefix(s.Mark, plain):
-		return "Take " + s.Mark
+		return s.Mark
 	}
-	return fmt.Sprintf("Take %s (%s)", s.Mark, s.Part)
+	return fmt.Sprintf("%s (%s)", s.Mark, s.Part)
 }
 
 func (d Deed) begin() string {

@@ -1,0 +1,125 @@
+package main
+
+import (
+	"bytes"
+	"errors"
+	"slices"
+	"strconv"
+
+	"pinwright/export/files"
+	"pinwright/export/picture"
+	"pinwright/export/svg"
+	"pinwright/parts"
+	"pinwright/parts/stack"
+)
+
+// Size of the pictures that go beside the cut files, mm: no wider, and about as high where the content
+// can be set higher or wider.
+const (
+	pictureWidth  = 180
+	pictureHeight = 240
+	sideHeight    = 320 // of the side view: enough for 2 : 1 with the pins of most jobs
+)
+
+// pictures draws, as files, every sheet, the mechanism and its planes, and the pins of one copy.
+func (p plan) pictures() ([]files.File, error) {
+	var out []files.File
+	add := func(name string, pic picture.Picture, err error) error {
+		if err != nil {
+			return err
+		}
+		var b bytes.Buffer
+		if err := svg.WritePicture(&b, pic); err != nil {
+			return err
+		}
+		out = append(out, files.File{Name: "pictures/" + name + ".svg", Data: b.Bytes()})
+		return nil
+	}
+	for _, s := range p.sheets {
+		pic, err := picture.Layout(s, pictureWidth, 1000)
+		if err := add(s.Name, pic, err); err != nil {
+			return nil, err
+		}
+	}
+	order, err := p.assembling()
+	if err != nil {
+		return nil, err
+	}
+	scene := p.scene()
+	front, frontErr := picture.FrontView(scene, pictureWidth, pictureHeight)
+	planes, planesErr := picture.Planes(scene, pictureWidth, pictureHeight)
+	side, sideErr := picture.SideView(p.sideKits(order), p.sideLevels(), pictureWidth, sideHeight)
+	return out, errors.Join(add("front", front, frontErr), add("planes", planes, planesErr), add("side", side, sideErr))
+}
+
+// sideKey explains the side view, in so many lines on a page.
+const sideKeyLines = 3
+const sideKey = "To the left of each pin are its dimensions in mm: the length of the bolt or shaft; next to it what is clamped, from the head to the nut, then the nut and the thread past it. To the right is what is on the pin, with thicknesses."
+
+// sideKits are the kits of the first copy as pieces to be drawn; all copies carry the same.
+func (p plan) sideKits(order assembling) []picture.Kit {
+	var out []picture.Kit
+	for _, k := range p.firstKits() {
+		kit := picture.Kit{Name: k.Joint, Text: k.Through.Designation}
+		kit.Pieces = append(kit.Pieces, picture.Piece{
+			Kind: picture.ShankPiece, From: k.Through.From, To: k.Through.To, Outer: k.Through.Diameter,
+		})
+		for i, e := range k.Elements {
+			piece := pieceOf(e, k.Through.Diameter)
+			piece.Step = order.stepOf(k.Joint, i)
+			if piece.Kind == picture.PartPiece {
+				piece.Tint = p.tintOf(p.partAt(e))
+			}
+			kit.Pieces = append(kit.Pieces, piece)
+		}
+		out = append(out, kit)
+	}
+	return out
+}
+
+// tintOf is the place of a part among those of the first copy, which tells its tint in all pictures.
+func (p plan) tintOf(name string) int {
+	return slices.IndexFunc(p.firstParts(), func(part parts.Part) bool { return part.Name == name })
+}
+
+// firstKits are those of the first copy.
+func (p plan) firstKits() []stack.Kit {
+	var out []stack.Kit
+	for _, k := range p.kits {
+		if k.Copy == p.job.Copies[0].Name {
+			out = append(out, k)
+		}
+	}
+	return out
+}
+
+// pieceOf draws an element of a kit. Parts are drawn as wide as three times the pin.
+func pieceOf(e stack.Element, pin float64) picture.Piece {
+	piece := picture.Piece{Name: e.What, From: e.From, To: e.To, Outer: e.Diameter, Inner: pin}
+	switch e.Kind {
+	case stack.HeadElement:
+		piece.Kind, piece.Inner = picture.HeadPiece, 0
+		piece.Name = ""
+	case stack.NutElement:
+		piece.Kind = picture.NutPiece
+	case stack.WasherElement:
+		piece.Kind = picture.WasherPiece
+	case stack.SpacerElement:
+		piece.Kind, piece.Name = picture.SpacerPiece, "spacer"
+	case stack.CollarElement:
+		piece.Kind, piece.Name = picture.SpacerPiece, "collar"
+	case stack.BearingElement:
+		piece.Kind, piece.Name = picture.SeatPiece, "bearing "+e.What
+	default:
+		piece.Kind, piece.Name, piece.Outer = picture.PartPiece, e.Part, 3*pin
+	}
+	return piece
+}
+
+func (p plan) sideLevels() []picture.Level {
+	var out []picture.Level
+	for _, l := range p.levels {
+		out = append(out, picture.Level{Name: "plane " + strconv.Itoa(l.Plane), From: l.From, To: l.To})
+	}
+	return out
+}
