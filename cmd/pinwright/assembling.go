@@ -10,6 +10,7 @@ import (
 	"pinwright/export/pdf"
 	"pinwright/export/picture"
 	"pinwright/parts"
+	"pinwright/parts/job"
 	"pinwright/parts/stack"
 	"pinwright/parts/steps"
 )
@@ -26,7 +27,10 @@ type assembling struct {
 func (p plan) assembling() (assembling, error) {
 	a := assembling{items: map[string][]int{}}
 	for _, k := range p.firstKits() {
-		pin := steps.Pin{Joint: k.Joint, Through: throughOf(k.Through), Notes: k.Notes}
+		pin := steps.Pin{Joint: k.Joint, Through: throughOf(k.Through), Notes: slices.Clone(k.Notes)}
+		if k.Pin.Kind == job.BearingPin && k.Pin.Nut != "none" {
+			pin.Notes = append([]string{"Tighten the nut: the links turn on the bearing, not on the bolt."}, pin.Notes...)
+		}
 		var items []int
 		for _, e := range k.Elements {
 			if e.Kind == stack.HeadElement {

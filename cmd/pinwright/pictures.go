@@ -70,6 +70,9 @@ func (p plan) sideKits(order assembling) []picture.Kit {
 			if piece.Kind == picture.PartPiece {
 				piece.Tint = p.tintOf(p.partAt(e))
 			}
+			if seat := seatIn(k, e); seat > 0 {
+				piece.Outer, piece.Inner = max(piece.Outer, seat+2*k.Through.Diameter), seat
+			}
 			kit.Pieces = append(kit.Pieces, piece)
 		}
 		out = append(out, kit)
@@ -91,6 +94,18 @@ func (p plan) firstKits() []stack.Kit {
 		}
 	}
 	return out
+}
+
+// seatIn is the diameter of the bearing that sits in a part of a kit, 0 for none.
+func seatIn(k stack.Kit, e stack.Element) float64 {
+	if e.Kind != stack.PartElement {
+		return 0
+	}
+	i := slices.IndexFunc(k.Elements, func(b stack.Element) bool { return b.Kind == stack.BearingElement && b.Part == e.Part })
+	if i < 0 {
+		return 0
+	}
+	return k.Elements[i].Diameter
 }
 
 // pieceOf draws an element of a kit. Parts are drawn as wide as three times the pin.

@@ -31,7 +31,7 @@ func ExampleOrder() {
 	}
 	// Output:
 	// Step 1, LEFT-1 CRANK 0°: A: put washer ISO 7089 4 on ISO 4762 M4x16 and push it up through the part.
-	// Step 2, LEFT-1 COUPLER: Put it on A over washer ISO 7089 4. A: close with washer ISO 7089 4 and nut DIN 985 M4. A: Leave 0.2 mm of play.
+	// Step 2, LEFT-1 COUPLER: Put it on A over washer ISO 7089 4. A: close with washer ISO 7089 4 and nut DIN 985 M4. Leave 0.2 mm of play.
 }
 
 // Every item of every pin is in exactly one step, every part in one, and a part comes after everything

@@ -59,13 +59,15 @@ func (d Deed) seat() string {
 	return d.Joint
 }
 
+// close says what goes over the last part, then the notes, the joint named once.
 func (d Deed) close() []string {
 	var out []string
 	if what := d.whats(d.Over); what != "" {
-		out = append(out, fmt.Sprintf("%s: close with %s.", d.Joint, what))
+		out = append(out, fmt.Sprintf("close with %s.", what))
 	}
-	for _, n := range d.pin.Notes {
-		out = append(out, d.Joint+": "+n)
+	out = append(out, d.pin.Notes...)
+	if len(out) > 0 {
+		out[0] = d.Joint + ": " + out[0]
 	}
 	return out
 }
