@@ -18,6 +18,7 @@ type Job struct {
 	Links   []Link // build rules, in the order of Linkage.Links
 	Frame   *Frame // nil: the ground pivots are somebody else's
 	Copies  []Copy // at least one; expanded: count 2 gives two entries
+	Body    *Body  // nil: the copies stand apart, nothing is said about how
 	Pins    []Pin  // one for every joint that carries one, in the order of Linkage.Joints
 	Stock   []Stock
 	Spare   Spare

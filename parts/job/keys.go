@@ -25,6 +25,7 @@ var jobForm = table("the job file",
 	key{name: "linkage", need: true, form: linkageForm, about: "The solved linkage: joints, links, drive.", slips: []string{"mechanism"}},
 	key{name: "frame", form: frameForm, about: "The ground as plates with the ground pivots in them. Leave it out when the pivots are somebody else's.", slips: []string{"ground", "base", "chassis"}},
 	key{name: "copies", form: listOf(copyForm), about: "How often the linkage is built, at which phase, which of them mirrored. Without it: once."},
+	key{name: "body", form: bodyForm, about: "The machine that the copies stand on, one above the other along their shafts, which turn together. Without it: nothing is said about how they stand."},
 	key{name: "pins", form: pinsForm, about: "What goes through each joint; default is for all joints that are not named.", advice: "write pins: {default: {bolt: M4, fit: medium}}", slips: []string{"bolts", "hardware"}},
 	key{name: "spare", form: spareForm, about: "Hardware bought on top."},
 	key{name: "stock", need: true, form: stocksForm, about: "The sheets on the shelf, each kind by a name of your choice.", advice: "write stock: {clear3: {material: cast acrylic, thickness: 3mm, sheet: [600mm, 400mm], margin: 5mm, kerf: ...}}", slips: []string{"sheets", "materials"}},
@@ -175,6 +176,12 @@ var copyForm = table("copy",
 	key{name: "count", form: whole(1, 200), about: "How many. Left out: 1.", slips: []string{"number", "quantity"}},
 	key{name: "phase", form: either(turn, listOf(turn)), about: "Angle of the drive ahead of the job's own, one for all or one for each.", slips: []string{"phases", "offset"}},
 	key{name: "mirror", form: truth, about: "Built as the mirror image.", slips: []string{"mirrored", "flip"}},
+)
+
+var bodyForm = table("body",
+	key{name: "order", form: listOf(name(fileName)), about: "Copies by name, from the lowest up. Left out: in their order."},
+	key{name: "spacing", form: either(choice("least"), positive(5000)), about: "Height from one copy to the next: least (the tool finds where they never touch), or a length. Left out: least.", slips: []string{"distance", "pitch"}},
+	key{name: "shafts", form: named(fileName, place), about: "Where the origin of a copy's linkage lies, by copy, seen along the shafts. Left out: [0, 0] for all, which is one shaft.", slips: []string{"at", "places"}},
 )
 
 var pinsForm = form{kind: aNamed, rule: jointName, item: &pinForm, least: 1}

@@ -107,6 +107,7 @@ func (r *reader) build(v *value) Job {
 	j.Frame = r.frame(v.get("frame"), d, &j)
 	r.tellNoStock(j.Stock)
 	j.Copies = r.copies(v.get("copies"))
+	j.Body = r.body(v.get("body"), &j)
 	j.Pins = r.pins(v.get("pins"), v.at, &j)
 	j.Spare = Spare{Percent: v.get("spare").get("percent").numberOr(0), Least: int(v.get("spare").get("least").numberOr(0))}
 	return j

@@ -66,6 +66,13 @@ func drawJob(t *rapid.T) Job {
 	for i := range rapid.IntRange(1, 4).Draw(t, "copies") {
 		j.Copies = append(j.Copies, Copy{fmt.Sprintf("c%d", i), mm(t, -7, 7, "phase"), rapid.Bool().Draw(t, "mirror")})
 	}
+	if n := len(j.Copies); n > 1 && rapid.Bool().Draw(t, "body") {
+		j.Body = &Body{Shafts: make([]outline.Point, n), Spacing: rapid.SampledFrom([]float64{0, 12.5}).Draw(t, "spacing")}
+		for i := range n {
+			j.Body.Order = append(j.Body.Order, n-1-i)
+			j.Body.Shafts[i].X = mm(t, -99, 99, "x")
+		}
+	}
 	if rapid.Bool().Draw(t, "frame") {
 		f := &Frame{Stock: stock(), Width: mm(t, 1, 50, "rim"), Plates: []FramePlate{{"back", -1, []string{"O", "G"}}, {"front", 90, []string{"G"}}}}
 		f.Mount = &Mount{At: []outline.Point{{X: 1, Y: 2}, {X: mm(t, 5, 9, "x"), Y: -3}}, Bolt: "M5", Fit: "coarse"}
@@ -288,6 +295,20 @@ func writeJob(j Job) string {
 	line("copies:")
 	for _, c := range j.Copies {
 		line("  - {name: %s, phase: %s, mirror: %v}", c.Name, rad(c.Phase), c.Mirror)
+	}
+	if b := j.Body; b != nil {
+		var order []string
+		for _, i := range b.Order {
+			order = append(order, j.Copies[i].Name)
+		}
+		spacing := "least"
+		if b.Spacing > 0 {
+			spacing = mm(b.Spacing)
+		}
+		line("body:\n  order: [%s]\n  spacing: %s\n  shafts:", strings.Join(order, ", "), spacing)
+		for i, c := range j.Copies {
+			line("    %s: %s", c.Name, at(b.Shafts[i]))
+		}
 	}
 	line("pins:")
 	for _, p := range j.Pins {
