@@ -1,0 +1,110 @@
+package planes
+
+// Conflict says that there is no assignment: these rules contradict each other, and without any one of them
+// those left do not.
+type Conflict struct {
+	Apart   []Apart
+	Swept   []Swept
+	Close   []Close
+	Demands []Demand
+	problem Problem
+}
+
+// explain finds a smallest set of rules that contradict each other in a problem without an answer.
+//
+// Rules are taken away in halves, quarters and so on down to single ones, as long as there is no answer
+// without them; a last pass goes through those left one by one. Demands are tried last: what the job asks
+// for is kept in the explanation only if it takes part.
+func explain(p Problem) *Conflict {
+	rules := len(p.Apart) + len(p.Swept) + len(p.Close) + len(p.Demands)
+	keep := make([]bool, rules)
+	for i := range keep {
+		keep[i] = true
+	}
+	for size := max(1, rules/2); ; size /= 2 {
+		for from := 0; from < rules; from += size {
+			was := append([]bool(nil), keep...)
+			some := false
+			for i := from; i < min(from+size, rules); i++ {
+				some = some || keep[i]
+				keep[i] = false
+			}
+			if some && solvable(p.with(keep)) {
+				keep = was
+			}
+		}
+		if size == 1 {
+			break
+		}
+	}
+	q := p.with(keep)
+	return &Conflict{Apart: q.Apart, Swept: q.Swept, Close: q.Close, Demands: q.Demands, problem: p}
+}
+
+// with returns the problem with those rules only that are kept, in the order demands, close, apart, swept
+// from the last to the first to be tried.
+func (p Problem) with(keep []bool) Problem {
+	q := p
+	q.Close = kept(p.Close, keep)
+	keep = keep[len(p.Close):]
+	q.Apart = kept(p.Apart, keep)
+	keep = keep[len(p.Apart):]
+	q.Swept = kept(p.Swept, keep)
+	keep = keep[len(p.Swept):]
+	q.Demands = kept(p.Demands, keep)
+	return q
+}
+
+func kept[T any](list []T, keep []bool) []T {
+	var out []T
+	for i, x := range list {
+		if keep[i] {
+			out = append(out, x)
+		}
+	}
+	return out
+}
+
+// solvable tells whether a problem has an answer. A search without a result in the states allowed counts as
+// one: then a rule stays that might go.
+func solvable(p Problem) bool {
+	m, err := newModel(p)
+	if err != nil {
+		return true
+	}
+	if m.isFixed == 0 {
+		return m.finishable()
+	}
+	limit := p.States
+	if limit <= 0 {
+		limit = 400_000
+	}
+	s := newSearch(m)
+	return s.run(limit) != nil || s.open.Len() > 0
+}
+
+// finishable tells whether all bodies can be placed when planes are free: then heads and nuts can have the
+// height they need in empty planes, and only sets and their order count.
+func (m *model) finishable() bool {
+	dead := map[set]bool{}
+	var down func(placed set) bool
+	down = func(placed set) bool {
+		if placed == m.all {
+			return true
+		}
+		if dead[placed] {
+			return false
+		}
+		open, found := m.open(placed), false
+		m.layers(m.ready(placed, open), func(next set) {
+			if found {
+				return
+			}
+			opening, stay := m.opening(placed, next), m.open(placed|next)
+			found = !m.clash(open, opening, (open|opening)&^stay, stay) && down(placed|next)
+		})
+		dead[placed] = !found
+		return found
+	}
+	return down(0)
+}
