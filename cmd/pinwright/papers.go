@@ -44,7 +44,9 @@ func (p plan) papers(format pdf.Format) (files.File, error) {
 	}
 	add(pdf.Heading("What lies where"))
 	add(pdf.Drawing{Picture: front, Caption: p.pose() + " The highest plane is nearest; joints of the frame are filled."})
-	add(pdf.Drawing{Picture: planes, Caption: "Each plane with its parts, the others in grey; heights are those of the side view. " + p.pose()})
+	for _, pic := range planes {
+		add(pdf.Drawing{Picture: pic, Caption: "Each plane with its parts, the others in grey; heights are those of the side view. " + p.pose()})
+	}
 	order, err := p.assembling()
 	if err != nil {
 		return files.File{}, err

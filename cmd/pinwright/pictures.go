@@ -2,7 +2,6 @@ package main
 
 import (
 	"bytes"
-	"errors"
 	"slices"
 	"strconv"
 
@@ -46,10 +45,25 @@ func (p plan) pictures() ([]files.File, error) {
 		return nil, err
 	}
 	scene := p.scene()
-	front, frontErr := picture.FrontView(scene, pictureWidth, pictureHeight)
-	planes, planesErr := picture.Planes(scene, pictureWidth, pictureHeight)
-	side, sideErr := picture.SideView(p.sideKits(order), p.sideLevels(), pictureWidth, sideHeight)
-	return out, errors.Join(add("front", front, frontErr), add("planes", planes, planesErr), add("side", side, sideErr))
+	front, err := picture.FrontView(scene, pictureWidth, pictureHeight)
+	if err := add("front", front, err); err != nil {
+		return nil, err
+	}
+	planes, err := picture.Planes(scene, pictureWidth, pictureHeight)
+	if err != nil {
+		return nil, err
+	}
+	for i, pic := range planes {
+		name := "planes"
+		if len(planes) > 1 {
+			name += "-" + strconv.Itoa(i+1)
+		}
+		if err := add(name, pic, nil); err != nil {
+			return nil, err
+		}
+	}
+	side, err := picture.SideView(p.sideKits(order), p.sideLevels(), pictureWidth, sideHeight)
+	return out, add("side", side, err)
 }
 
 // sideKey explains the side view, in so many lines on a page.

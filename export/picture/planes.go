@@ -7,66 +7,101 @@ import (
 	"pinwright/parts/outline"
 )
 
+// Measures of the planes, mm of paper.
+const (
+	planeText  = 2.4
+	planeTitle = 2.8
+	planeTop   = 6.0
+	planeGap   = 4.0
+	planeLeast = 30.0 // a drawing is not made smaller than this for the sake of fewer pictures
+)
+
 // Planes draws which part lies where: for each plane with a part on it, from the lowest, a small drawing of
-// its parts in their tints of FrontView, with the names of the joints on them and the outlines of all
-// other parts in grey. All are at one scale, the largest at which they fill width x height mm of
-// paper and no larger than 1:1.
-func Planes(s Scene, width, height float64) (Picture, error) {
+// its parts in their tints of FrontView, with the names of the joints that they have holes for and the
+// outlines of all other parts in grey. All are at one scale, the largest at which they fill width x height mm
+// of paper and no larger than 1:1; where that would make them too small they go on several pictures.
+func Planes(s Scene, width, height float64) ([]Picture, error) {
 	box, err := s.bounds()
 	if err != nil {
-		return Picture{}, fmt.Errorf("planes: %w", err)
+		return nil, fmt.Errorf("planes: %w", err)
 	}
 	if !(width > 60 && height > 60 && width <= most && height <= most) {
-		return Picture{}, fmt.Errorf("planes: %g x %g mm of paper are too little", width, height)
+		return nil, fmt.Errorf("planes: %g x %g mm of paper are too little", width, height)
 	}
 	cells := s.cells()
-	const (
-		text  = 2.4
-		title = 2.8
-		top   = 6.0
-		gap   = 4.0
-	)
-	tallest := 0
-	for _, c := range cells {
-		tallest = max(tallest, len(c.bodies))
-	}
-	foot := float64(tallest)*1.5*text + 1.7*title // below a drawing: its title and its parts
-	columns, scale := 0, 0.0
-	for n := 1; n <= 4; n++ {
-		rows := (len(cells) + n - 1) / n
-		w, h := (width-float64(n-1)*gap)/float64(n), (height-top)/float64(rows)-gap-foot
-		if at := min(1, (w-2*rim)/box.Width(), (h-2*rim)/box.Height()); at > scale {
-			columns, scale = n, at
+	var g planeGrid
+	for each := len(cells); each > 0; each-- {
+		if g = gridOf(s, cells, each, box, outline.Point{X: width, Y: height}); g.scale*max(box.Width(), box.Height()) >= planeLeast || g.scale >= 1 {
+			break
 		}
 	}
-	if columns == 0 {
-		return Picture{}, fmt.Errorf("planes: %g x %g mm of paper are too little for %d planes", width, height, len(cells))
+	if len(cells) > 0 && g.columns == 0 {
+		return nil, fmt.Errorf("planes: %g x %g mm of paper are too little for the parts of one plane and their names", width, height)
 	}
-	rows := (len(cells) + columns - 1) / columns
-	cell := outline.Point{X: (width - float64(columns-1)*gap) / float64(columns), Y: scale*box.Height() + 2*rim}
+	var out []Picture
+	for page := range slices.Chunk(cells, max(1, g.each)) {
+		out = append(out, s.drawPlanes(page, g, box, width))
+	}
+	return out, nil
+}
+
+// planeGrid is how the drawings are set: so many on a picture, in columns.
+type planeGrid struct {
+	each, columns int
+	scale         float64
+	cell          outline.Point // size of a drawing
+	foot          float64       // below it: its title and its parts
+}
+
+// gridOf finds the columns with which so many drawings on a picture are largest; none when they do not fit.
+func gridOf(s Scene, cells []planeCell, each int, box outline.Box, paper outline.Point) planeGrid {
+	best := planeGrid{each: each}
+	for n := 1; n <= min(4, each); n++ {
+		rows := (each + n - 1) / n
+		w := (paper.X - float64(n-1)*planeGap) / float64(n)
+		foot := 0.0
+		for _, c := range cells {
+			foot = max(foot, 1.7*planeTitle+s.legend(c, w).height)
+		}
+		h := (paper.Y-planeTop)/float64(rows) - planeGap - foot
+		if at := min(1, (w-2*rim)/box.Width(), (h-2*rim)/box.Height()); at > best.scale {
+			best.columns, best.scale, best.foot = n, at, foot
+			best.cell = outline.Point{X: w, Y: at*box.Height() + 2*rim}
+		}
+	}
+	return best
+}
+
+// legend names the parts of a plane.
+func (s Scene) legend(c planeCell, width float64) legend {
+	var entries []entry
+	for _, b := range c.bodies {
+		entries = append(entries, entry{tint(b), s.Bodies[b].Name})
+	}
+	return entriesOf(entries, width, planeText)
+}
+
+// drawPlanes draws some planes in one picture.
+func (s Scene) drawPlanes(cells []planeCell, g planeGrid, box outline.Box, width float64) Picture {
+	rows := (len(cells) + g.columns - 1) / g.columns
+	pitch := g.cell.Y + g.foot + planeGap
 	p := Picture{
-		Title: "The planes, from the lowest", Width: width, Height: top + float64(rows)*(cell.Y+foot+gap),
+		Title: "The planes, from the lowest", Width: width, Height: planeTop + float64(rows)*pitch,
 		Text: fmt.Sprintf("%d planes and the parts on each.", len(cells)),
 	}
-	p.label(width-sideEdge, p.Height-3.4, ratio(scale), text, End, false)
+	p.label(width-sideEdge, p.Height-3.4, ratio(g.scale), planeText, End, false)
 	for i, c := range cells {
-		x := float64(i%columns) * (cell.X + gap)
-		y := p.Height - top - float64(i/columns)*(cell.Y+foot+gap) - cell.Y
-		w := windowOf(box, scale, outline.Box{Min: outline.Point{X: x, Y: y}, Max: outline.Point{X: x + cell.X, Y: y + cell.Y}})
-		p.Items = append(p.Items, Shape{Closed: []outline.Outline{rectangle(x, y, x+cell.X, y+cell.Y)}, Fill: colour(pale)})
+		x := float64(i%g.columns) * (g.cell.X + planeGap)
+		y := p.Height - planeTop - float64(i/g.columns)*pitch - g.cell.Y
+		w := windowOf(box, g.scale, outline.Box{Min: outline.Point{X: x, Y: y}, Max: outline.Point{X: x + g.cell.X, Y: y + g.cell.Y}})
+		p.Items = append(p.Items, Shape{Closed: []outline.Outline{w.box.Outline()}, Fill: colour(pale)})
 		p.cell(w, s, c)
 		level := s.Planes[c.plane]
 		heading := fmt.Sprintf("%s: %s to %s mm", level.Name, figure(level.From), figure(level.To))
-		p.label(x, y-1.3*title, shorten(heading, title, cell.X/1.2), title, Start, true)
-		var entries []entry
-		for _, b := range c.bodies {
-			entries = append(entries, entry{tint(b), s.Bodies[b].Name})
-		}
-		l := entriesOf(entries, 0, text)
-		l.column = cell.X
-		p.entries(l, x, y-1.7*title)
+		p.label(x, y-1.3*planeTitle, shorten(heading, planeTitle, g.cell.X/1.2), planeTitle, Start, true)
+		p.entries(s.legend(c, g.cell.X), x, y-1.7*planeTitle)
 	}
-	return p, nil
+	return p
 }
 
 // planeCell is a plane and the bodies on it, as indices.
