@@ -284,11 +284,8 @@ func TestRandomRegions(t *testing.T) {
 		if err := Verify(items, stock, l); err != nil {
 			t.Fatal(err)
 		}
-		// The chords of a part that runs out to a thin cusp cross each other, which the library refuses.
-		if !slices.ContainsFunc(items, func(it Item) bool { return len(outline.Thin(it.Shape, 0.1)) > 0 }) {
-			if err := byPolygons(items, stock, l); err != nil {
-				t.Fatal(err)
-			}
+		if err := byPolygons(items, stock, l); err != nil {
+			t.Fatal(err)
 		}
 		for i, b := range Bound(items, stock) {
 			used := 0
@@ -328,7 +325,14 @@ func byPolygons(items []Item, stock []Stock, l Layout) error {
 		text.WriteString(")")
 		g, err := geom.UnmarshalWKT(strings.ReplaceAll(text.String(), ",)", ")"))
 		if err != nil {
-			return err
+			// The chords of a part that runs out to a cusp cross each other, which the library refuses: Verify
+			// alone must do for such a part.
+			bare := it
+			bare.Shape.Holes = nil
+			if len(outline.Thin(bare.Shape, 4*chord)) == 0 {
+				return err
+			}
+			continue
 		}
 		shapes[i] = g
 		if it.Angles != nil {
