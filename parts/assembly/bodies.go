@@ -19,6 +19,7 @@ type thing struct {
 	part   string   // link, frame plate or cross member; "" for what is on a pin
 	joints []string // that a part has holes for
 	joint  string   // of what is on a pin
+	shaft  bool     // it is the shaft itself
 }
 
 // meet tells whether two bodies could touch and should not: they share a height, are not one rigid
@@ -128,7 +129,11 @@ func ofKits(kits []stack.Kit) []thing {
 		if k.Pin.Kind == job.ShaftPin {
 			what = "shaft"
 		}
+		before := len(out)
 		add(what, k.Through.Diameter, k.Through.From, k.Through.To)
+		for i := before; i < len(out); i++ {
+			out[i].shaft = k.Pin.Kind == job.ShaftPin
+		}
 	}
 	return out
 }

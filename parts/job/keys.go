@@ -180,7 +180,7 @@ var copyForm = table("copy",
 
 var bodyForm = table("body",
 	key{name: "order", form: listOf(name(fileName)), about: "Copies by name, from the lowest up. Left out: in their order."},
-	key{name: "spacing", form: either(choice("least"), positive(5000)), about: "Height from one copy to the next: least (the tool finds where they never touch), or a length. Left out: least.", slips: []string{"distance", "pitch"}},
+	key{name: "spacing", form: positive(5000), about: "Height from one copy to the next. Left out: the least at which they never touch, which the tool finds.", slips: []string{"distance", "pitch"}},
 	key{name: "shafts", form: named(fileName, place), about: "Where the origin of a copy's linkage lies, by copy, seen along the shafts. Left out: [0, 0] for all, which is one shaft.", slips: []string{"at", "places"}},
 )
 

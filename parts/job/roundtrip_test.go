@@ -301,13 +301,12 @@ func writeJob(j Job) string {
 		for _, i := range b.Order {
 			order = append(order, j.Copies[i].Name)
 		}
-		spacing := "least"
-		if b.Spacing > 0 {
-			spacing = mm(b.Spacing)
-		}
-		line("body:\n  order: [%s]\n  spacing: %s\n  shafts:", strings.Join(order, ", "), spacing)
+		line("body:\n  order: [%s]\n  shafts:", strings.Join(order, ", "))
 		for i, c := range j.Copies {
 			line("    %s: %s", c.Name, at(b.Shafts[i]))
+		}
+		if b.Spacing > 0 {
+			line("  spacing: %s", mm(b.Spacing))
 		}
 	}
 	line("pins:")
