@@ -8,9 +8,7 @@ import (
 
 	"github.com/spf13/cobra"
 
-	"pinwright/parts"
 	"pinwright/parts/assembly"
-	"pinwright/parts/job"
 	"pinwright/parts/stack"
 )
 
@@ -41,11 +39,17 @@ carries, the smallest gaps between everything that moves, and the parts.`,
 				}
 			} else {
 				p.print(t.out, gaps)
+				if err == nil {
+					err = p.printBody(t.out)
+				}
 			}
 			if err != nil {
 				return refused(err)
 			}
 			if err := p.clashes(gaps); err != nil {
+				if !asJSON {
+					p.printBends(t.out, gaps)
+				}
 				return refused(err)
 			}
 			if !asJSON {
@@ -163,39 +167,11 @@ func (p plan) pathOf(g assembly.Gap) string {
 
 // gaps returns the smallest gaps of the mechanism, one copy of it.
 func (p plan) gaps() ([]assembly.Gap, error) {
-	j := p.job
-	list, kits := p.parts, p.kits
-	name, found := "", false
-	for _, c := range j.Copies {
-		if !c.Mirror {
-			name, found = c.Name, true
-			break
-		}
+	j, list, kits, err := p.single()
+	if err != nil {
+		return nil, err
 	}
-	if !found {
-		// Every copy is a mirror image: look at the original, which has the same gaps.
-		j.Copies = []job.Copy{{}}
-		var err error
-		if list, err = parts.Make(j, p.motion.mechanism, faces(p.levels)); err != nil {
-			return nil, err
-		}
-		if kits, err = stack.Build(j); err != nil {
-			return nil, err
-		}
-	}
-	var one []parts.Part
-	for _, x := range list {
-		if x.Copy == name {
-			one = append(one, x)
-		}
-	}
-	var pins []stack.Kit
-	for _, k := range kits {
-		if k.Copy == name {
-			pins = append(pins, k)
-		}
-	}
-	return assembly.Gaps(j, p.motion.mechanism, one, pins, p.levels)
+	return assembly.Gaps(j, p.motion.mechanism, list, kits, p.levels)
 }
 
 // prove makes sure that nothing touches through the whole motion.
@@ -204,5 +180,12 @@ func (p plan) prove() error {
 	if err != nil {
 		return err
 	}
-	return p.clashes(gaps)
+	if err := p.clashes(gaps); err != nil {
+		return err
+	}
+	j, list, kits, err := p.single()
+	if err != nil {
+		return err
+	}
+	return assembly.Crowded(j, p.motion.mechanism, list, kits, p.levels)
 }

@@ -1,0 +1,104 @@
+package main
+
+import (
+	"fmt"
+	"io"
+	"math"
+
+	"pinwright/parts"
+	"pinwright/parts/assembly"
+	"pinwright/parts/job"
+	"pinwright/parts/stack"
+)
+
+// single returns parts and kits of one copy that is not mirrored, for questions about gaps.
+func (p plan) single() (job.Job, []parts.Part, []stack.Kit, error) {
+	j := p.job
+	list, kits := p.parts, p.kits
+	name, found := "", false
+	for _, c := range j.Copies {
+		if !c.Mirror {
+			name, found = c.Name, true
+			break
+		}
+	}
+	if !found {
+		// Every copy is a mirror image: look at the original, which has the same gaps.
+		alone := j
+		alone.Copies, alone.Body = []job.Copy{{}}, nil
+		var err error
+		if list, err = parts.Make(alone, p.motion.mechanism, faces(p.levels)); err != nil {
+			return j, nil, nil, err
+		}
+		if kits, err = stack.Build(alone); err != nil {
+			return j, nil, nil, err
+		}
+	}
+	var one []parts.Part
+	for _, x := range list {
+		if x.Copy == name {
+			one = append(one, x)
+		}
+	}
+	var pins []stack.Kit
+	for _, k := range kits {
+		if k.Copy == name {
+			pins = append(pins, k)
+		}
+	}
+	return j, one, pins, nil
+}
+
+// printBody tells how close the copies may stand on their body; an error if they stand closer.
+func (p plan) printBody(w io.Writer) error {
+	if p.job.Body == nil {
+		return nil
+	}
+	j, list, kits, err := p.single()
+	if err != nil {
+		return err
+	}
+	s, err := assembly.Space(j, p.motion.mechanism, list, kits, p.levels)
+	if err != nil {
+		return fmt.Errorf("%s: body: %w", j.At("body"), err)
+	}
+	words := fmt.Sprintf("copies may stand %s mm apart along their shafts and more", upToTenth(s.Clear))
+	if s.Between != "" {
+		words += fmt.Sprintf("; %s rule, drive %.1f deg", s.Between, degrees(s.Angle))
+	}
+	fmt.Fprintf(w, "%-13s %s\n", "body", words)
+	if s.Least < s.Clear-0.05 {
+		fmt.Fprintf(w, "%-13s or %s mm, where they reach into one another and touch nowhere\n", "", upToTenth(s.Least))
+	}
+	if s.Blocked != "" {
+		fmt.Fprintf(w, "%-13s note: %s\n", "", s.Blocked)
+	}
+	return assembly.Crowded(j, p.motion.mechanism, list, kits, p.levels)
+}
+
+// printBends tells which bars could be bent out of the way.
+func (p plan) printBends(w io.Writer, gaps []assembly.Gap) {
+	j, list, kits, err := p.single()
+	if err != nil {
+		return
+	}
+	asked := map[string]bool{}
+	for _, g := range gaps {
+		if g.MM > 0 {
+			break
+		}
+		for _, name := range []string{g.A, g.B} {
+			if asked[name] {
+				continue
+			}
+			asked[name] = true
+			b, ok, err := assembly.FindBend(j, p.motion.mechanism, list, kits, p.levels, name)
+			if err == nil && ok {
+				fmt.Fprintf(w, "%-13s shape: bent, bend: %.1fmm on %s frees it (gap %.2f mm)\n", "advice", b.MM, b.Link, b.Gap)
+			}
+		}
+	}
+}
+
+// upToTenth writes a length rounded up to a tenth.
+func upToTenth(mm float64) string { return fmt.Sprintf("%.1f", math.Ceil(mm*10-1e-6)/10) }
