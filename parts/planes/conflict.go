@@ -84,8 +84,14 @@ func solvable(p Problem) bool {
 }
 
 // finishable tells whether all bodies can be placed when planes are free: then heads and nuts can have the
-// height they need in empty planes, and only sets and their order count.
+// height they need in empty planes, and only sets and their order count. Unless heads or nuts of two pins
+// come near each other, bodies that share a plane may as well lie on planes of their own, in any order.
 func (m *model) finishable() bool {
+	alone := true
+	for i := range m.pins {
+		c := &m.pins[i].close
+		alone = alone && c[Head] == [3]set{} && c[Nut] == [3]set{}
+	}
 	dead := map[set]bool{}
 	var down func(placed set) bool
 	down = func(placed set) bool {
@@ -96,15 +102,33 @@ func (m *model) finishable() bool {
 			return false
 		}
 		open, found := m.open(placed), false
-		m.layers(m.ready(placed, open), func(next set) {
-			if found {
+		try := func(next set) {
+			if found || dead[placed|next] {
 				return
 			}
 			opening, stay := m.opening(placed, next), m.open(placed|next)
 			found = !m.clash(open, opening, (open|opening)&^stay, stay) && down(placed|next)
-		})
+		}
+		ready := m.ready(placed, open)
+		if alone {
+			m.singles(ready, try)
+		} else {
+			m.layers(ready, try)
+		}
 		dead[placed] = !found
 		return found
 	}
 	return down(0)
+}
+
+// singles calls f with the ready bodies one by one, groups whole.
+func (m *model) singles(ready set, f func(next set)) {
+	each(ready, func(b int) {
+		g := m.group[b]
+		var apart set
+		each(g, func(i int) { apart |= m.apart[i] })
+		if g&^ready == 0 && g&(1<<b-1) == 0 && apart&g == 0 {
+			f(g)
+		}
+	})
 }
