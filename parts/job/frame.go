@@ -24,7 +24,7 @@ func (r *reader) frame(v *value, d defaults, j *Job) *Frame {
 	}
 	planes := map[int]string{}
 	for _, e := range v.get("plates").all() {
-		plate := FramePlate{Name: e.name, Plane: int(e.value.get("plane").numberOr(0))}
+		plate := FramePlate{Name: e.name, Plane: int(e.value.get("plane").numberOr(0)), PlaneFree: !e.value.has("plane")}
 		if other, taken := planes[plate.Plane]; taken && e.value.get("plane").ok() {
 			r.fail(e.value.get("plane").at, "put one of them on a free plane", "plates %s and %s both lie on plane %d", other, e.name, plate.Plane)
 		} else if e.value.get("plane").ok() {

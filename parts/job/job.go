@@ -45,6 +45,9 @@ const (
 type Link struct {
 	Name      string
 	Plane     int
+	PlaneFree bool     // no plane is given: it is to be found, and Plane is 0 until then
+	SameAs    string   // link or plate on whose plane it must lie; "" when free
+	InFrontOf []string // links and plates that must lie on lower planes
 	Shape     Shape
 	Stock     string
 	Width     float64        // across bars and arms, mm; 0: the least that the edge rule allows
@@ -100,9 +103,11 @@ type Frame struct {
 
 // FramePlate is one plate of the frame.
 type FramePlate struct {
-	Name   string
-	Plane  int
-	Pivots []string // ground joints it carries, in the order of the joints
+	Name      string
+	Plane     int
+	PlaneFree bool     // as of a link
+	InFrontOf []string // as of a link
+	Pivots    []string // ground joints it carries, in the order of the joints
 }
 
 // Mount is the holes by which the frame is screwed to something.

@@ -13,7 +13,7 @@ import (
 const (
 	unitAdvice  = "write units: {length: mm, angle: deg}"
 	kerfAdvice  = "kerf is the FULL width that the beam takes away (not the loss on one side): cut a square in this sheet, measure it, and write what is missing; most lasers take 0.1 to 0.3 mm"
-	planeAdvice = "state plane: 1 or another whole number, the level in the side view; links that share a joint lie on different planes"
+	planeAdvice = "state plane: 1 or another whole number, the level in the side view, or leave it out: it is found; links that share a joint lie on different planes"
 	pinAdvice   = "say bolt: M4, or bearing: 624, or shaft: 6mm"
 )
 
@@ -37,10 +37,11 @@ var unitsForm = table("units",
 )
 
 var (
-	stockKey  = key{name: "stock", form: name(fileName), about: "Which of the stock it is cut from.", slips: []string{"material", "sheet"}}
-	widthKey  = key{name: "width", form: positive(500), about: "Width across bars and arms. Left out: the least that the edge rule allows."}
-	filletKey = key{name: "fillet", form: between(length, 0, 200), about: "Radius of inside corners."}
-	rimKey    = key{name: "rim", form: positive(100), about: "Material left round lightening windows. Left out: by the edge rule."}
+	inFrontKey = key{name: "in-front-of", form: either(name(fileName), listOf(name(fileName))), about: "Links and frame plates that must lie on lower planes; nuts are in front, heads behind.", slips: []string{"above", "before"}}
+	stockKey   = key{name: "stock", form: name(fileName), about: "Which of the stock it is cut from.", slips: []string{"material", "sheet"}}
+	widthKey   = key{name: "width", form: positive(500), about: "Width across bars and arms. Left out: the least that the edge rule allows."}
+	filletKey  = key{name: "fillet", form: between(length, 0, 200), about: "Radius of inside corners."}
+	rimKey     = key{name: "rim", form: positive(100), about: "Material left round lightening windows. Left out: by the edge rule."}
 )
 
 var defaultsForm = table("defaults", stockKey, widthKey, filletKey, rimKey)
@@ -91,7 +92,9 @@ var linkForm = table("link",
 	key{name: "lengths", form: named(pairName, positive(5000)), about: "Distances of pairs of pins, {A-B: 50, B-C: 40}: for n pins 2n-3 of them."},
 	key{name: "at", form: named(jointName, place), about: "Places of the pins in a frame of the link's own, instead of lengths.", slips: []string{"places"}},
 	key{name: "drive", form: either(choice("full-turn"), driveForm), about: "This link is driven: full-turn, or between two angles. One link of the job has it."},
-	key{name: "plane", form: whole(-99, 99), about: "Level in the side view on which the link lies.", advice: planeAdvice, slips: []string{"layer", "level", "z"}},
+	key{name: "plane", form: whole(-99, 99), about: "Level in the side view on which the link lies. Left out: it is found.", advice: planeAdvice, slips: []string{"layer", "level", "z"}},
+	key{name: "same-plane-as", form: name(fileName), about: "Link or frame plate on whose plane the link must lie."},
+	inFrontKey,
 	key{name: "shape", form: choice(shapeNames()...), about: "Form of the part. Left out: bar for pins on a line, crank-arm for a driven link of two pins, else plate.", slips: []string{"form", "type"}},
 	stockKey,
 	widthKey,
@@ -151,7 +154,8 @@ var frameForm = table("frame",
 )
 
 var plateForm = table("plate",
-	key{name: "plane", need: true, form: whole(-99, 99), about: "Level in the side view on which the plate lies.", advice: planeAdvice, slips: []string{"layer", "level", "z"}},
+	key{name: "plane", form: whole(-99, 99), about: "Level in the side view on which the plate lies. Left out: it is found.", advice: planeAdvice, slips: []string{"layer", "level", "z"}},
+	inFrontKey,
 	key{name: "pivots", form: listOf(name(jointName)), about: "Ground joints that it carries. Left out: all.", slips: []string{"pins", "joints"}},
 )
 

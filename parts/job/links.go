@@ -319,14 +319,10 @@ func (r *reader) rules(dr *draft, drafts []draft, d defaults, j *Job) Link {
 	for _, a := range v.get("around").each() {
 		l.Around = append(l.Around, outline.Disc{Centre: pointOf(a.get("at")), Radius: a.get("radius").numberOr(0)})
 	}
-	switch {
-	case v == nil:
-		r.fail(dr.at, "write "+dr.name+": {plane: 1} under links", "link %s of the table has no plane", dr.name)
-	case !v.has("plane") && v.torn:
-	case !v.has("plane"):
-		r.fail(dr.at, planeAdvice, "link %s has no plane", dr.name)
-	default:
+	if v.has("plane") {
 		r.planeSound[dr.name] = v.get("plane").ok()
+	} else {
+		l.PlaneFree = true
 	}
 	r.shape(&l, dr, j)
 	l.Foot = r.foot(dr, drafts)

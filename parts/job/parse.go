@@ -105,6 +105,7 @@ func (r *reader) build(v *value) Job {
 	d := r.defaults(v)
 	r.linkage(v.get("linkage"), d, &j)
 	j.Frame = r.frame(v.get("frame"), d, &j)
+	r.order(v, &j)
 	r.tellNoStock(j.Stock)
 	j.Copies = r.copies(v.get("copies"))
 	j.Body = r.body(v.get("body"), &j)

@@ -74,7 +74,12 @@ func drawJob(t *rapid.T) Job {
 		}
 	}
 	if rapid.Bool().Draw(t, "frame") {
-		f := &Frame{Stock: stock(), Width: mm(t, 1, 50, "rim"), Plates: []FramePlate{{"back", -1, []string{"O", "G"}}, {"front", 90, []string{"G"}}}}
+		f := &Frame{Stock: stock(), Width: mm(t, 1, 50, "rim"), Plates: []FramePlate{{Name: "back", Plane: -1, Pivots: []string{"O", "G"}}, {Name: "front", Plane: 90, Pivots: []string{"G"}}}}
+		if rapid.Bool().Draw(t, "plates free") {
+			f.Plates[0].Plane, f.Plates[0].PlaneFree = 0, true
+			f.Plates[1].Plane, f.Plates[1].PlaneFree = 0, true
+			f.Plates[1].InFrontOf = []string{"back", "link-0"}
+		}
 		f.Mount = &Mount{At: []outline.Point{{X: 1, Y: 2}, {X: mm(t, 5, 9, "x"), Y: -3}}, Bolt: "M5", Fit: "coarse"}
 		if rapid.Bool().Draw(t, "mount by diameter") {
 			f.Mount.Bolt, f.Mount.Fit, f.Mount.Diameter = "", "", mm(t, 1, 20, "diameter")
@@ -124,6 +129,15 @@ func drawLinkage(t *rapid.T, j *Job) {
 		link := linkage.Link{Name: fmt.Sprintf("link-%d", i), Pins: []string{last, next}, Lengths: []linkage.Length{{A: last, B: next, MM: mm(t, 30, 100, "length")}}}
 		b := Link{
 			Name: link.Name, Plane: i, Shape: Bar, Width: mm(t, 1, 40, "width"), Fillet: mm(t, 0, 9, "fillet"),
+		}
+		if i > 0 && rapid.Bool().Draw(t, "free") {
+			b.Plane, b.PlaneFree = 0, true
+			if i > 1 {
+				b.SameAs = "link-0"
+			}
+			if rapid.Bool().Draw(t, "in front") {
+				b.InFrontOf = []string{"link-0"}
+			}
 		}
 		if i > 0 && i < n-1 && rapid.Bool().Draw(t, "foot") {
 			toe := joint(fmt.Sprintf("T%d", i))
@@ -231,7 +245,17 @@ func writeJob(j Job) string {
 	line("  links:")
 	for i, l := range j.Linkage.Links {
 		k := j.Links[i]
-		line("    %s:\n      pins: [%s]\n      plane: %d\n      shape: %s\n      stock: %s\n      width: %s\n      fillet: %s\n      lengths:", l.Name, strings.Join(l.Pins, ", "), k.Plane, k.Shape, k.Stock, mm(k.Width), mm(k.Fillet))
+		line("    %s:\n      pins: [%s]", l.Name, strings.Join(l.Pins, ", "))
+		if !k.PlaneFree {
+			line("      plane: %d", k.Plane)
+		}
+		if k.SameAs != "" {
+			line("      same-plane-as: %s", k.SameAs)
+		}
+		if len(k.InFrontOf) > 0 {
+			line("      in-front-of: %s", k.InFrontOf[0])
+		}
+		line("      shape: %s\n      stock: %s\n      width: %s\n      fillet: %s\n      lengths:", k.Shape, k.Stock, mm(k.Width), mm(k.Fillet))
 		for _, s := range l.Lengths {
 			line("        %s-%s: %s", s.A, s.B, mm(s.MM))
 		}
@@ -278,7 +302,15 @@ func writeJob(j Job) string {
 	if f := j.Frame; f != nil {
 		line("frame:\n  stock: %s\n  width: %s\n  plates:", f.Stock, mm(f.Width))
 		for _, p := range f.Plates {
-			line("    %s: {plane: %d, pivots: [%s]}", p.Name, p.Plane, strings.Join(p.Pivots, ", "))
+			plane := fmt.Sprintf("plane: %d", p.Plane)
+			if p.PlaneFree {
+				plane = fmt.Sprintf("in-front-of: [%s]", strings.Join(p.InFrontOf, ", "))
+			}
+			if p.PlaneFree && len(p.InFrontOf) == 0 {
+				line("    %s: {pivots: [%s]}", p.Name, strings.Join(p.Pivots, ", "))
+				continue
+			}
+			line("    %s: {%s, pivots: [%s]}", p.Name, plane, strings.Join(p.Pivots, ", "))
 		}
 		if f.Mount.Bolt != "" {
 			line("  mount: {holes: [%s, %s], bolt: %s, fit: %s}", at(f.Mount.At[0]), at(f.Mount.At[1]), f.Mount.Bolt, f.Mount.Fit)
