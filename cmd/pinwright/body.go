@@ -64,7 +64,10 @@ func (p plan) printBody(w io.Writer) error {
 	}
 	words := fmt.Sprintf("copies may stand %s mm apart along their shafts and more", upToTenth(s.Clear))
 	if s.Between != "" {
-		words += fmt.Sprintf("; %s rule, drive %.1f deg", s.Between, degrees(s.Angle))
+		words += fmt.Sprintf("; %s rule", s.Between)
+		if !s.Still {
+			words += fmt.Sprintf(", drive %.1f deg", degrees(s.Angle))
+		}
 	}
 	fmt.Fprintf(w, "%-13s %s\n", "body", words)
 	if s.Least < s.Clear-0.05 {

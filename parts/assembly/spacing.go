@@ -18,7 +18,8 @@ type Spacing struct {
 	Least   float64 // smallest height from one copy to the next at which nothing of one touches anything of another, mm
 	Clear   float64 // nothing touches at this height and at every larger one; Least is smaller where copies reach into one another
 	Between string  // what rules Clear: "tie of left and foot of right"; "" when nothing does
-	Angle   float64 // drive angle at which those come near each other, if Between is not ""
+	Still   bool    // those do not move against each other: they are simply in one place
+	Angle   float64 // else the job's drive angle at which they come too close
 	Blocked string  // what keeps the shaft from running on from copy to copy, in words; "" if nothing does or no two copies have one shaft
 }
 
@@ -45,12 +46,12 @@ func Space(j job.Job, m *linkage.Mechanism, list []parts.Part, kits []stack.Kit,
 		if p.bans[i].to <= 0 {
 			break
 		}
-		close, angle, err := p.close(&p.bans[i])
+		near, angle, err := p.close(&p.bans[i])
 		if err != nil {
 			return Spacing{}, err
 		}
-		if close {
-			out.Clear, out.Angle, out.Between = p.bans[i].to, angle, p.bans[i].words(j)
+		if near {
+			out.Clear, out.Angle, out.Between, out.Still = p.bans[i].to, angle, p.bans[i].words(j), p.bans[i].still
 			break
 		}
 	}
@@ -77,11 +78,11 @@ func Crowded(j job.Job, m *linkage.Mechanism, list []parts.Part, kits []stack.Ki
 		if s <= b.from || s >= b.to {
 			continue
 		}
-		close, angle, err := p.close(b)
+		near, angle, err := p.close(b)
 		if err != nil {
 			return err
 		}
-		if close {
+		if near {
 			least, err := p.least()
 			if err != nil {
 				return err
@@ -195,7 +196,7 @@ func (p *pairs) still(t thing, oneAxis bool) bool {
 func (p *pairs) close(b *ban) (bool, float64, error) {
 	x, y := b.a.Body, b.b.Body
 	x.Copy, y.Copy = p.copy(b.lower), p.copy(b.upper)
-	key := fmt.Sprint(p.plan(b.a), "|", p.plan(b.b), x.Copy, y.Copy, b.still)
+	key := p.key(b)
 	g, ok := p.known[key]
 	if !ok {
 		gap := stack.RunningGap
@@ -215,8 +216,13 @@ func (p *pairs) close(b *ban) (bool, float64, error) {
 	return !math.IsInf(g.MM, 1), g.Angle, nil
 }
 
+// key names all that the answer of close depends on.
+func (p *pairs) key(b *ban) string {
+	return fmt.Sprint(plan(b.a), "|", plan(b.b), p.copy(b.lower), p.copy(b.upper), b.still)
+}
+
 // plan names what a thing looks like from above.
-func (p *pairs) plan(t thing) string {
+func plan(t thing) string {
 	if t.part != "" {
 		return t.part
 	}
@@ -232,11 +238,11 @@ again:
 		if s <= b.from || s >= b.to {
 			continue
 		}
-		close, _, err := p.close(b)
+		near, _, err := p.close(b)
 		if err != nil {
 			return 0, err
 		}
-		if close {
+		if near {
 			s = b.to
 			goto again
 		}
