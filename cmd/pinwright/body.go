@@ -49,18 +49,44 @@ func (p plan) single() (job.Job, []parts.Part, []stack.Kit, error) {
 	return j, one, pins, nil
 }
 
-// printBody tells how close the copies may stand on their body; an error if they stand closer.
-func (p plan) printBody(w io.Writer) error {
+// spacing finds how close the copies may stand on their body; nil when the job has none.
+func (p plan) spacing() (*assembly.Spacing, error) {
+	if p.job.Body == nil {
+		return nil, nil
+	}
+	j, list, kits, err := p.single()
+	if err != nil {
+		return nil, err
+	}
+	s, err := assembly.Space(j, p.motion.mechanism, list, kits, p.levels)
+	if err != nil {
+		return nil, fmt.Errorf("%s: body: %w", j.At("body"), err)
+	}
+	return &s, nil
+}
+
+// crowded is an error if the copies stand closer on their body than they may, or if that cannot be
+// told.
+func (p plan) crowded() error {
 	if p.job.Body == nil {
 		return nil
+	}
+	if p.job.Body.Spacing == 0 {
+		_, err := p.spacing()
+		return err
 	}
 	j, list, kits, err := p.single()
 	if err != nil {
 		return err
 	}
-	s, err := assembly.Space(j, p.motion.mechanism, list, kits, p.levels)
-	if err != nil {
-		return fmt.Errorf("%s: body: %w", j.At("body"), err)
+	return assembly.Crowded(j, p.motion.mechanism, list, kits, p.levels)
+}
+
+// printBody tells how close the copies may stand on their body.
+func (p plan) printBody(w io.Writer) error {
+	s, err := p.spacing()
+	if s == nil {
+		return err
 	}
 	words := fmt.Sprintf("copies may stand %s mm apart along their shafts and more", upToTenth(s.Clear))
 	if s.Between != "" {
@@ -76,7 +102,7 @@ func (p plan) printBody(w io.Writer) error {
 	if s.Blocked != "" {
 		fmt.Fprintf(w, "%-13s note: %s\n", "", s.Blocked)
 	}
-	return assembly.Crowded(j, p.motion.mechanism, list, kits, p.levels)
+	return nil
 }
 
 // printBends tells which bars could be bent out of the way.

@@ -52,6 +52,9 @@ carries, the smallest gaps between everything that moves, and the parts.`,
 				}
 				return refused(err)
 			}
+			if err := p.crowded(); err != nil {
+				return refused(err)
+			}
 			if !asJSON {
 				fmt.Fprintf(t.out, "%-13s it goes together\n", "verdict")
 			}
@@ -183,9 +186,5 @@ func (p plan) prove() error {
 	if err := p.clashes(gaps); err != nil {
 		return err
 	}
-	j, list, kits, err := p.single()
-	if err != nil {
-		return err
-	}
-	return assembly.Crowded(j, p.motion.mechanism, list, kits, p.levels)
+	return p.crowded()
 }

@@ -19,6 +19,7 @@ type findings struct {
 	Paths        []path         `json:"paths"`
 	Pins         []pinFinding   `json:"pins"`
 	Gaps         []gap          `json:"gaps"`
+	Body         *body          `json:"body,omitempty"`
 	Parts        int            `json:"parts"`
 }
 
@@ -57,6 +58,14 @@ type gap struct {
 	Drive float64 `json:"drive"`
 }
 
+// body is how close copies may stand, mm along their shafts; see assembly.Spacing.
+type body struct {
+	Least   float64 `json:"least"`
+	Clear   float64 `json:"clear"`
+	Between string  `json:"between"`
+	Blocked string  `json:"blocked,omitempty"`
+}
+
 // findings gathers what is known; err is what kept the job from being worked out further.
 func (p plan) findings(gaps []assembly.Gap, err error) findings {
 	r := p.motion.report
@@ -66,6 +75,13 @@ func (p plan) findings(gaps []assembly.Gap, err error) findings {
 	}
 	if err == nil {
 		err = p.clashes(gaps)
+	}
+	if err == nil {
+		var s *assembly.Spacing
+		if s, err = p.spacing(); s != nil {
+			f.Body = &body{s.Least, s.Clear, s.Between, s.Blocked}
+			err = p.crowded()
+		}
 	}
 	f.OK = err == nil
 	if err != nil {
