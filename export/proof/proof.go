@@ -52,11 +52,12 @@ const (
 )
 
 // Check proves a folder of cut files. The error is for what keeps it from starting: no manifest, or one
-// that cannot be read. Everything else, a broken drawing too, is in the report.
+// that cannot be read; errors.Is(err, fs.ErrNotExist) tells the first. Everything else, a broken drawing
+// too, is in the report.
 func Check(fsys fs.FS) (Report, error) {
 	f, err := fsys.Open(manifest.Name)
 	if errors.Is(err, fs.ErrNotExist) {
-		return Report{}, fmt.Errorf("proof: there is no %s here: give the folder that the files were written to", manifest.Name)
+		return Report{}, absent{"proof: there is no " + manifest.Name + " here: give the folder that the files were written to"}
 	}
 	if err != nil {
 		return Report{}, fmt.Errorf("proof: %w", err)
@@ -100,10 +101,21 @@ func CheckDir(dir string) (Report, error) {
 		return Report{}, fmt.Errorf("proof: %w", err)
 	}
 	if !info.IsDir() {
-		return Report{}, fmt.Errorf("proof: %s is not a folder", filepath.ToSlash(dir))
+		return Report{}, absent{"proof: " + filepath.ToSlash(dir) + " is not a folder: give the folder that the files were written to"}
 	}
-	return Check(os.DirFS(dir))
+	r, err := Check(os.DirFS(dir))
+	if err != nil {
+		err = fmt.Errorf("%s: %w", filepath.ToSlash(dir), err)
+	}
+	return r, err
 }
+
+// absent says that there is nothing to prove. It is fs.ErrNotExist.
+type absent struct{ says string }
+
+func (a absent) Error() string { return a.says }
+
+func (absent) Unwrap() error { return fs.ErrNotExist }
 
 // task is one drawing and what it must show.
 type task struct {
