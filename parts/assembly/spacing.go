@@ -87,7 +87,7 @@ func Crowded(j job.Job, m *linkage.Mechanism, list []parts.Part, kits []stack.Ki
 			if err != nil {
 				return err
 			}
-			return j.Fault("body.spacing", fmt.Sprintf("%s touch at a spacing of %.1f mm, drive angle %.1f deg", b.words(j), s, angle*180/math.Pi),
+			return j.Fault("body.spacing", fmt.Sprintf("%s touch, or come too close, at a spacing of %.1f mm, drive angle %.1f deg", b.words(j), s, angle*180/math.Pi),
 				fmt.Sprintf("the least is %.1f mm, or leave spacing out", math.Ceil(least*10-1e-6)/10))
 		}
 	}

@@ -1,6 +1,7 @@
 package interference
 
 import (
+	"fmt"
 	"math"
 	"testing"
 )
@@ -62,5 +63,28 @@ func BenchmarkGapsFourLegs(b *testing.B) {
 			b.Fatal(err)
 		}
 		b.ReportMetric(float64(len(pairs)), "pairs")
+	}
+}
+
+// BenchmarkGapsByLinks shows the cost against the number of links: all pairs, from the linkage on.
+func BenchmarkGapsByLinks(b *testing.B) {
+	for _, file := range []string{"fourbar.json", "klann.json", "jansen.json"} {
+		b.Run(fmt.Sprintf("%d", len(load(b, file).Links)+1), func(b *testing.B) {
+			for b.Loop() {
+				s, m := newSpace(b, load(b, file))
+				bodies := bodiesOf(m, 0.02*s.m.size)
+				var pairs [][2]Body
+				for i, x := range bodies {
+					for _, y := range bodies[i+1:] {
+						if apartFrom(m, x, y) {
+							pairs = append(pairs, [2]Body{x, y})
+						}
+					}
+				}
+				if _, err := s.All(pairs, planning); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
 	}
 }

@@ -277,3 +277,38 @@ func TestSameForAnyProcessors(t *testing.T) {
 		}
 	}
 }
+
+// A parallelogram of two cranks passes its change points as one, by its opposite sides: the discs at its
+// moving joints keep the distance of the ground pins. One crossed over (an antiparallelogram) cannot be
+// followed where it lies in line, which is said and not glossed over.
+func TestParallelogramOfTwoCranks(t *testing.T) {
+	l := fourBar(nil)
+	l.Links[1].Lengths[0].MM, l.Links[2].Lengths[0].MM = 100, 40
+	l.Drive.From, l.Drive.To = 0.3, 0.3+2*math.Pi
+	l.Joints[2].Near, l.Joints[3].Near = &Point{X: 38, Y: 12}, &Point{X: 138, Y: 12}
+	tip := Body{Name: "tip", Carrier: OnJoint, Of: "A", Region: pin(4)}
+	bar := Body{Name: "rocker", Carrier: OnLink, Of: "rocker", Region: bar(40, 5)}
+	o := Options{Accuracy: 1e-2, Limit: 1000, Boxes: 20000}
+	s, m := newSpace(t, l)
+	g, err := s.Smallest(tip, bar, o)
+	if err != nil {
+		t.Fatal(err)
+	}
+	// The bars stay parallel; where they lie in line the tip is at 40 and the rocker begins at 100.
+	if want := 100 - 40 - 4 - 5.0; math.Abs(g.MM-want) > 2*o.Accuracy {
+		t.Errorf("gap %.4f, closed form %.4f", g.MM, want)
+	}
+	if c, err := m.Cycle(36, nil); err != nil || len(c.Changes) == 0 {
+		t.Errorf("no change points: %v", err)
+	}
+	l.Joints[3].Near = &Point{X: 80, Y: -35}
+	if m, err := linkage.New(l); err == nil {
+		if s, err := NewSpace(m); err == nil {
+			if g, err := s.Smallest(tip, bar, o); err == nil {
+				t.Errorf("crossed over: gap %+v is said to be certain", g)
+			} else {
+				t.Log(err)
+			}
+		}
+	}
+}
