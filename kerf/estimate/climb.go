@@ -50,7 +50,7 @@ func descend(n int, smallGradient float64, f func(z, grad []float64) float64) (z
 		}
 		t, fresh := 1.0, 0.0
 		found := false
-		for range 40 {
+		for range 12 {
 			for i := range z {
 				next[i] = z[i] + t*step[i]
 			}
@@ -105,7 +105,7 @@ func descend(n int, smallGradient float64, f func(z, grad []float64) float64) (z
 
 // When descend is done, in units of the log likelihood, where one tenth is of no consequence.
 const (
-	smallGain = 1e-10
+	smallGain = 1e-8
 	longest   = 20 // standard errors in one step
 )
 

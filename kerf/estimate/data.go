@@ -72,7 +72,7 @@ type data struct {
 const leastSpread = 5e-4
 
 func newData(readings []reading.Reading) (*data, error) {
-	d := &data{kept: map[momentsKey][]moments{}, axes: map[reading.Axis]int{}, sides: map[reading.Side]int{}, diameters: map[float64]bool{}, answers: map[reading.Answer]int{}, hermite: hermite(7), panel: legendre(12), scale: leastSpread}
+	d := &data{kept: map[momentsKey][]moments{}, axes: map[reading.Axis]int{}, sides: map[reading.Side]int{}, diameters: map[float64]bool{}, answers: map[reading.Answer]int{}, hermite: hermite(7), panel: legendre(8), scale: leastSpread}
 	if len(readings) == 0 {
 		return nil, TooFewError{Says: "no readings", Advice: []string{"cut the coupon and fill in its table"}}
 	}
@@ -139,8 +139,12 @@ func newData(readings []reading.Reading) (*data, error) {
 			}
 		}
 	}
-	// A calliper does not repeat better than it rounds: the standard deviation of rounding.
+	// A calliper does not repeat better than it rounds, the standard deviation of rounding; nor does a
+	// hand that tries pins by less than two micrometres.
 	d.leastRepeat = max(d.scale, d.coarsest/math.Sqrt(12))
+	if d.coarsest == 0 && d.measured < len(readings) {
+		d.leastRepeat = 2e-3
+	}
 	if d.above == 0 || d.below == 0 {
 		what, cure := "loose", "try thicker pins, until some do not go"
 		if d.above == 0 {

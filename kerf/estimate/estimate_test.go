@@ -116,6 +116,34 @@ func coupons() []coupon {
 			}
 			return out
 		}, []Term{Kerf, Scatter, DropsAt, PushAt}},
+		{"several pins in a hole", truth{kerf: 0.2, scatter: 0.04, repeat: 0.012, drops: 0.1, push: 0.06}, func(t truth, rng *rand.Rand) []reading.Reading {
+			var out []reading.Reading
+			for i := range 24 {
+				off := normal(rng, t.scatter)
+				before := reading.Drops
+				for k := range 3 {
+					r := reading.Tried(fmt.Sprint(i), 3.75+0.005*float64(i), 3.9+0.08*float64(k), reading.No)
+					r.Answer = t.answer(t.size(r, off) + normal(rng, t.repeat) - r.Pin)
+					if r.Answer.Looseness() > before.Looseness() {
+						r.Answer = before // who tries finds that the thicker pin cannot go more easily
+					}
+					before = r.Answer
+					out = append(out, r)
+				}
+			}
+			return out
+		}, []Term{Kerf, Scatter, DropsAt, PushAt}},
+		{"diameters and axes", truth{kerf: 0.2, diameter: 0.1, centre: 60.0 / 13, axis: 0.06, scatter: 0.02}, func(t truth, rng *rand.Rand) []reading.Reading {
+			var out []reading.Reading
+			for i := range 24 { // the centre is the harmonic mean of these
+				r := reading.Measured(fmt.Sprint(i), reading.Hole, []float64{3, 5, 10, 4, 6, 4}[i%6], 0, 0)
+				r.Axis = []reading.Axis{reading.X, reading.Y}[i/6%2]
+				v := round(t.size(r, normal(rng, t.scatter)), 0.01)
+				r.Least, r.Most = v-0.005, v+0.005
+				out = append(out, r)
+			}
+			return out
+		}, []Term{Kerf, Diameter, Axis, Scatter}},
 		{"all together", truth{kerf: 0.18, holes: 0.12, scatter: 0.03, repeat: 0.015, taper: 0.1, drops: 0.1, push: 0.06}, func(t truth, rng *rand.Rand) []reading.Reading {
 			var out []reading.Reading
 			for i := range 8 {
@@ -151,7 +179,8 @@ func (t truth) of(term Term) float64 {
 
 // Intervals of 95 % cover the truth in 95 % of seeded data sets, within the binomial bounds. Terms that
 // the truth does not have are sometimes picked up; a figure that was not picked up counts as missed.
-// The usual run has 120 data sets of each kind; with PINWRIGHT_ORACLES=require it has 2,000.
+// The usual run has 120 data sets of each kind; with PINWRIGHT_ORACLES=require it has 2,000;
+// of several pins in a hole, which take long, 10 and 400.
 func TestCoverage(t *testing.T) {
 	sets := 120
 	if os.Getenv("PINWRIGHT_ORACLES") == "require" {
@@ -159,6 +188,13 @@ func TestCoverage(t *testing.T) {
 	}
 	for _, c := range coupons() {
 		t.Run(c.name, func(t *testing.T) {
+			sets := sets
+			if c.name == "several pins in a hole" { // a quarter of a second each
+				sets /= 5
+				if sets < 100 {
+					sets = 10
+				}
+			}
 			hits := map[Term]int{}
 			below := map[Term]int{}
 			sum := map[Term]float64{}

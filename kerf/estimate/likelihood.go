@@ -3,6 +3,7 @@ package estimate
 import (
 	"math"
 	"slices"
+	"sync"
 
 	"gonum.org/v1/gonum/mat"
 )
@@ -128,14 +129,36 @@ func (r row) centre(m model, s state) float64 {
 // takes half the log determinant of the mean's information off.
 func (d *data) likelihood(m model, p, grad []float64, restricted bool) float64 {
 	s := d.state(m, p)
+	// Features are summed in chunks of a fixed size, in their order, however many of them run at once.
 	g := make([]float64, len(p))
+	chunks := (len(d.features) + chunk - 1) / chunk
+	parts := make([]part, chunks)
+	work := func(c int) {
+		parts[c].slopes = make([]float64, len(p))
+		for i := c * chunk; i < min((c+1)*chunk, len(d.features)); i++ {
+			if f := &d.features[i]; len(f.rows) == 1 {
+				parts[c].sum += d.single(m, s, f, parts[c].slopes)
+			} else {
+				parts[c].sum += d.several(m, s, f, parts[c].slopes)
+			}
+		}
+	}
+	if d.repeated && chunks > 1 {
+		var all sync.WaitGroup
+		for c := range chunks {
+			all.Go(func() { work(c) })
+		}
+		all.Wait()
+	} else {
+		for c := range chunks {
+			work(c)
+		}
+	}
 	sum := 0.0
-	for i := range d.features {
-		f := &d.features[i]
-		if len(f.rows) == 1 {
-			sum += d.single(m, s, f, g)
-		} else {
-			sum += d.several(m, s, f, g)
+	for _, c := range parts {
+		sum += c.sum
+		for i, v := range c.slopes {
+			g[i] += v
 		}
 	}
 	// The floors under the spreads: d spread / d log.
@@ -171,6 +194,15 @@ func (d *data) likelihood(m model, p, grad []float64, restricted bool) float64 {
 		copy(grad, g)
 	}
 	return sum
+}
+
+// chunk is how many features are summed in one go.
+const chunk = 16
+
+// part is what a chunk of features adds to the likelihood and its gradient.
+type part struct {
+	sum    float64
+	slopes []float64
 }
 
 // collect adds the slopes of a row, with a weight, to the gradient by figures as they are (spreads
@@ -257,10 +289,11 @@ func (d *data) several(m model, s state, f *feature, g []float64) float64 {
 	}
 	peak := top / bottom
 	low, high := -9.0, 9.0
+	tries := 8 // enough to know about where it is
 	if pinned {
-		low, high = -500, 500
+		low, high, tries = -500, 500, 60
 	}
-	for range 60 {
+	for range tries {
 		_, first, bend := at(peak)
 		second = bend
 		if first > 0 {
@@ -285,19 +318,37 @@ func (d *data) several(m model, s state, f *feature, g []float64) float64 {
 			us, ws = append(us, peak+h*x), append(ws, h*d.hermite.w[i])
 		}
 	} else {
-		ends := []float64{-9, -3, 0, 3, 9}
+		ends := []float64{-7, -4, -2, 0, 2, 4, 7}
 		for i := range f.rows {
 			lo, hi := f.rows[i].ends(m, s)
 			for _, e := range []float64{lo, hi} {
-				for _, side := range []float64{-5, 0, 5} {
-					if u := (e - centre[i] + side*s.repeat) / step; u > -9 && u < 9 {
+				for _, side := range []float64{-4, 0, 4} {
+					if u := (e - centre[i] + side*s.repeat) / step; u > -7 && u < 7 {
 						ends = append(ends, u)
 					}
 				}
 			}
 		}
 		slices.Sort(ends)
-		for i := 1; i < len(ends); i++ {
+		// Panels narrower than two standard deviations of the steps resolve nothing more.
+		kept := ends[:1]
+		for _, e := range ends[1:] {
+			if e-kept[len(kept)-1] >= 2*s.repeat/step {
+				kept = append(kept, e)
+			}
+		}
+		kept[len(kept)-1] = 7
+		ends = kept
+		// What lies beyond an end at which the log-concave integrand is negligible is less still.
+		best, _, _ := at(peak)
+		from, to := 0, len(ends)-1
+		for from+1 < to && ends[from+1] < peak && best-value(at, ends[from+1]) > negligible {
+			from++
+		}
+		for to-1 > from && ends[to-1] > peak && best-value(at, ends[to-1]) > negligible {
+			to--
+		}
+		for i := from + 1; i <= to; i++ {
 			a, b := ends[i-1], ends[i]
 			if b-a < 1e-9 {
 				continue
@@ -380,6 +431,15 @@ func (d *data) gather(m model, s state) []moments {
 type momentsKey struct {
 	terms    [meanTerms]bool
 	negative bool
+}
+
+// negligible is how far under its peak the log of an integrand may be left out.
+const negligible = 14
+
+// value is the first result of a function that has three.
+func value(f func(float64) (float64, float64, float64), u float64) float64 {
+	v, _, _ := f(u)
+	return v
 }
 
 // information is the mean's information were all readings exact: X' V^-1 X, V with the scatter common

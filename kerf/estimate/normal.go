@@ -35,6 +35,14 @@ func between(low, high, mean, s float64) slope {
 		out.log += math.Log(max(high-low, 1e-300))
 		return out
 	}
+	switch {
+	case a < -certain && b > certain:
+		return slope{}
+	case a < -certain && b > -certain:
+		a = math.Inf(-1)
+	case b > certain && a < certain:
+		b = math.Inf(1)
+	}
 	if a+b > 0 || math.IsInf(b, 1) {
 		// Mirror: the ends change places and signs.
 		m := mirrored(-b, -a, s)
@@ -43,6 +51,9 @@ func between(low, high, mean, s float64) slope {
 	}
 	return mirrored(a, b, s)
 }
+
+// certain is how many standard deviations away an end does not count: 1e-12 of the variates lie beyond.
+const certain = 7.0
 
 // mirrored is between with the middle of the interval in the lower half.
 func mirrored(a, b, s float64) slope {
