@@ -138,12 +138,17 @@ func (f *fitting) neighbours(lower, upper int) (a, b member, ok bool) {
 	return member{}, member{}, false
 }
 
+// crossings are the pins with a part on a plane and the part below it on the plane before or on one
+// further down: the gap decides whether what is between the two can be filled.
 func (p *plan) crossings(lower, upper int) []crossing {
 	var out []crossing
 	for i := range p.fittings {
 		f := &p.fittings[i]
-		if a, b, ok := f.neighbours(lower, upper); ok {
-			out = append(out, crossing{f.washerThickness(), p.slabs[lower] - a.top() + b.bottom()})
+		for k := 1; k < len(f.members); k++ {
+			if a, b := f.members[k-1], f.members[k]; a.plane <= lower && b.plane == upper {
+				below := p.from[lower] + p.slabs[lower] - p.from[a.plane]
+				out = append(out, crossing{f.washerThickness(), below - a.top() + b.bottom()})
+			}
 		}
 	}
 	return out

@@ -5,8 +5,8 @@
 //
 //  1. A plane is a slab as thick as the thickest part on it, as measured. A part lies on the lower face
 //     of its slab. Heads of bolts are below, nuts above.
-//  2. Between neighbouring planes is the smallest gap that every pin with parts on both can fill: one
-//     washer as a rule; several washers, or washers on both sides of a spacer, where the pins have
+//  2. Between neighbouring planes is the smallest gap that lets every pin with a part above it fill what
+//     is between that part and its next one below: one washer as a rule; several washers, or washers on both sides of a spacer, where the pins have
 //     washers of different thickness, the parts on a plane differ in thickness or a bearing stands
 //     proud. What is left of the gap by then is play, at most MostPlay.
 //  3. Planes without parts are kept as room for heads and nuts: each as thick as the thicker neighbour
