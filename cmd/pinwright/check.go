@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cmp"
 	"errors"
 	"fmt"
 	"io"
@@ -9,6 +10,7 @@ import (
 	"github.com/spf13/cobra"
 
 	"pinwright/parts/assembly"
+	"pinwright/parts/job"
 	"pinwright/parts/stack"
 )
 
@@ -22,7 +24,7 @@ turn, transmission angles and toggles, the path of the traced joints, what each 
 carries, the smallest gaps between everything that moves, and the parts.`,
 		Example: `  pinwright check arm.yaml
   pinwright check arm.yaml --json | jq .gaps`,
-		Args: cobra.ExactArgs(1),
+		Args: one("job file"),
 		RunE: func(_ *cobra.Command, args []string) error {
 			j, _, err := readJob(args[0])
 			if err != nil {
@@ -151,21 +153,24 @@ func (p plan) clashes(gaps []assembly.Gap) error {
 
 // pathOf is the key path of a link or plate that takes part in a gap.
 func (p plan) pathOf(g assembly.Gap) string {
-	for _, name := range []string{g.A, g.B} {
-		for _, l := range p.job.Links {
-			if l.Name == name {
-				return "linkage.links." + name
-			}
+	return cmp.Or(keyOf(p.job, g.A), keyOf(p.job, g.B), "linkage")
+}
+
+// keyOf is the key path of the link or frame plate of a name, "" when there is none.
+func keyOf(j job.Job, name string) string {
+	for _, l := range j.Links {
+		if l.Name == name {
+			return "linkage.links." + name
 		}
-		if p.job.Frame != nil {
-			for _, f := range p.job.Frame.Plates {
-				if f.Name == name {
-					return "frame.plates." + name
-				}
+	}
+	if j.Frame != nil {
+		for _, f := range j.Frame.Plates {
+			if f.Name == name {
+				return "frame.plates." + name
 			}
 		}
 	}
-	return "linkage"
+	return ""
 }
 
 // gaps returns the smallest gaps of the mechanism, one copy of it.

@@ -33,7 +33,7 @@ are not Pinwright's alone.
 		Example: `  pinwright cut arm.yaml -o out
   pinwright cut arm.yaml -o out --effort 20        try harder to save sheets
   pinwright cut arm.yaml -o out --part-files       a drawing for every part as well`,
-		Args: cobra.ExactArgs(1),
+		Args: one("job file"),
 		RunE: func(c *cobra.Command, args []string) error {
 			if dir == "" {
 				return errors.New("cut: say where the files go: -o DIR")

@@ -11,6 +11,7 @@ import (
 func main() {
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
 	defer stop()
+	context.AfterFunc(ctx, stop) // whoever interrupts a second time is not asked again
 	os.Exit(run(ctx, os.Args[1:], terminal{
 		out:     os.Stdout,
 		err:     os.Stderr,

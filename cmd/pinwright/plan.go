@@ -1,6 +1,7 @@
 package main
 
 import (
+	"cmp"
 	"context"
 	"errors"
 	"fmt"
@@ -83,10 +84,12 @@ func stockNamed(j job.Job, name string) (job.Stock, int) {
 	return job.Stock{}, -1
 }
 
-// compensate makes the cut paths of all parts; every feature that the beam cannot make is named.
+// compensate makes the cut paths of all parts; every feature that the beam cannot make is named, once
+// for all copies of a link.
 func compensate(j job.Job, list []parts.Part) ([]kerf.Cut, error) {
 	var faults []error
 	cuts := make([]kerf.Cut, len(list))
+	told := map[string]bool{}
 	for i, p := range list {
 		names := make([]string, len(p.Holes))
 		for k, h := range p.Holes {
@@ -94,8 +97,9 @@ func compensate(j job.Job, list []parts.Part) ([]kerf.Cut, error) {
 		}
 		s, _ := stockNamed(j, p.Stock)
 		var err error
-		if cuts[i], err = kerf.Compensate(p.Name, p.Region, names, beam(s)); err != nil {
-			faults = append(faults, err)
+		if cuts[i], err = kerf.Compensate(p.Name, p.Region, names, beam(s)); err != nil && !told[p.Link] {
+			faults = append(faults, fmt.Errorf("%s: %w", j.At(cmp.Or(keyOf(j, p.Link), "frame.cross")), err))
+			told[p.Link] = true
 		}
 	}
 	return cuts, errors.Join(faults...)

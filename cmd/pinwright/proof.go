@@ -26,7 +26,7 @@ centre distance, every hole, every gap and margin, the order of the work. Files
 that were edited since they were written fail.`,
 		Example: `  pinwright proof out
   pinwright proof out --json | jq .ok`,
-		Args: cobra.ExactArgs(1),
+		Args: one("folder of cut files"),
 		RunE: func(_ *cobra.Command, args []string) error {
 			report, err := proof.CheckDir(args[0])
 			if errors.Is(err, fs.ErrNotExist) || errors.Is(err, fs.ErrPermission) {
