@@ -59,10 +59,10 @@ func (f *fitting) tooLong(err error) error {
 	if thicker, ok := longer(short); ok {
 		advice += fmt.Sprintf(", or take %s, which comes up to %g mm", thicker.Size, thicker.Most)
 	}
-	return fmt.Errorf(
+	return &wording{fmt.Sprintf(
 		"joint %s: from %s (plane %d) to %s (plane %d) the bolt needs %.1f mm, and the longest %s %s is %g mm: %s",
 		f.pin.Joint, first.name, first.plane, last.name, last.plane, short.Need,
-		short.Screw.Standard, short.Screw.Size, short.Screw.Most, advice)
+		short.Screw.Standard, short.Screw.Size, short.Screw.Most, advice), err}
 }
 
 // longer is the next thicker screw of the same head that comes long enough, its thicker nut and washers
@@ -79,3 +79,12 @@ func longer(short hardware.TooShortError) (hardware.Screw, bool) {
 	}
 	return hardware.Screw{}, false
 }
+
+// wording is an error told in other words.
+type wording struct {
+	text string
+	err  error
+}
+
+func (w *wording) Error() string { return w.text }
+func (w *wording) Unwrap() error { return w.err }

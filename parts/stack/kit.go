@@ -1,6 +1,7 @@
 package stack
 
 import (
+	"errors"
 	"fmt"
 	"math"
 	"slices"
@@ -150,7 +151,12 @@ func (p *plan) boltKit(f *fitting, pl *pile) error {
 	}
 	through, err := f.choose(pl.kit.Budget)
 	if err != nil {
-		return fault(p.job, pinKey(p.job, f.pin.Joint), err.Error(), "")
+		var long hardware.TooShortError
+		placed := fault(p.job, pinKey(p.job, f.pin.Joint), err.Error(), "")
+		if errors.As(err, &long) {
+			return &LongError{f.pin.Joint, placed}
+		}
+		return placed
 	}
 	through.From, through.To = tidy(face), tidy(face+max(through.Length, math.Ceil(through.Need*10-slack)/10))
 	if f.nut != nil {
