@@ -13,14 +13,16 @@ import (
 func TestDepthAgainstClosedForm(t *testing.T) {
 	s, _ := newSpace(t, fourBar(nil))
 	crank := Body{Name: "crank", Carrier: OnLink, Of: "crank", Region: bar(40, 6)}
-	post := Body{Name: "post", Region: outline.Region{Outer: outline.Circle(outline.Polar(50, 2), 9)}}
+	// At an edge of the boxes that the search begins with: their middles see 4.6 only.
+	const at = 15 * 2 * math.Pi / 48
+	post := Body{Name: "post", Region: outline.Region{Outer: outline.Circle(outline.Polar(50, at), 9)}}
 	o := Options{Accuracy: 0.01, Limit: 50, Boxes: 5000, Depth: true}
 	g, err := s.Smallest(crank, post, o)
 	if err != nil {
 		t.Fatal(err)
 	}
-	if g.MM < -5-1e-9 || g.MM-g.Error > -5 || g.MM > -4.7 || math.Abs(g.Angle-2) > 0.05 {
-		t.Errorf("depth %.4f (error %.4f) at %.4f, closed form 5 at 2", g.MM, g.Error, g.Angle)
+	if g.MM < -5-1e-9 || g.MM-g.Error > -5 || g.MM > -4.7 || math.Abs(g.Angle-at) > 0.05 {
+		t.Errorf("depth %.4f (error %.4f) at %.4f, closed form 5 at %.4f", g.MM, g.Error, g.Angle, at)
 	}
 	// Bars that cross are as deep as the slimmer is wide.
 	other := crank
