@@ -131,6 +131,8 @@ func TestTurnCounts(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	pa.rho, pa.loose = make([]float64, len(pa.at)), false // of the crank the strays are known
+	pa.rho[tip] = 40 * h * h / 2
 	pb := pose{at: make([]Point, len(pa.at)), vel: [][]Point{make([]Point, len(pa.at))}, rho: make([]float64, len(pa.at))}
 	pb.at[tip], pb.vel[0][tip] = Point{X: 10, Y: 8}, Point{X: 40}
 	low := s.apart(pa, pb, []float64{h}, x.a, x.b, s.place(pa, x.a), s.place(pb, x.b), Point{Y: 1})

@@ -176,7 +176,7 @@ func TestAdjustableAgainstBruteForce(t *testing.T) {
 		s, m := newSpace(t, l)
 		bodies := bodiesOf(m, 5)
 		bodies = append(bodies, Body{Name: "post", Region: outline.Region{Outer: outline.Circle(Point{X: 60, Y: -48}, 6)}})
-		const settings, steps = 41, 360
+		const settings, steps = 21, 360
 		var cycles []*linkage.Cycle
 		for k := range settings {
 			c, err := m.Cycle(steps, linkage.Setting{"D": float64(k) / (settings - 1)})
