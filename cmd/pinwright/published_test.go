@@ -40,14 +40,13 @@ func TestAllJobs(t *testing.T) {
 // The published lengths are in the drawings: as distances between the middles of circles, measured with
 // nothing but the drawings. Circles stay where they are when the beam is allowed for.
 //
-// Jansen's leg: Theo Jansen, The Great Pretender (2007), eleven lengths a to m of his own notation; a and l
-// place one pivot of the frame from the other. Missing are h (65.7) and i (49), which end at the toe, where
-// there is no hole.
+// Jansen's leg has the eleven lengths a to k that Theo Jansen published for his beach animals, with l and m;
+// a and l place one pivot of the frame from the other. Missing are h (65.7) and i (49), which end at the toe,
+// where there is no hole.
 //
-// Chebyshev's lambda linkage: crank 1, ground 2, coupler, its extension and rocker 2.5 each (P. L. Chebyshev's
-// proportions as given in I. I. Artobolevsky, Mechanisms in Modern Engineering Design, vol. 1; second hand),
-// times 20 mm. The crank's bore for the motor has a flat, its circle is no circle, so its length is measured by
-// the proof alone; the pen's hole is round.
+// Chebyshev's lambda linkage has the published proportions crank 1, ground 2, coupler, its extension and rocker
+// 2.5 each, here times 20 mm. The crank's bore and its place in the frame are left out: the bore has a flat, so
+// that it is no circle, and its length is measured by the proof alone.
 func TestPublishedLengthsInTheDrawings(t *testing.T) {
 	for _, c := range []struct {
 		job     string
@@ -81,7 +80,7 @@ func TestPublishedLengthsInTheDrawings(t *testing.T) {
 type pair struct{ apart, d1, d2 float64 }
 
 // pairsOfHoles measures all pairs of circles that lie in the same outside cut, on every sheet.
-func pairsOfHoles(t testing.TB, dir string) []pair {
+func pairsOfHoles(t stopper, dir string) []pair {
 	t.Helper()
 	var out []pair
 	for _, d := range sheetDrawings(t, dir) {

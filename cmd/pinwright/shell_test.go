@@ -68,8 +68,14 @@ func absent(t testing.TB, path string) {
 	}
 }
 
+// stopper is a test, or one run of a random test.
+type stopper interface {
+	Helper()
+	Fatalf(format string, args ...any)
+}
+
 // sheetDrawings reads the drawings of sheets in a directory, by name, in the order of their names.
-func sheetDrawings(t testing.TB, dir string) []dxf.Drawing {
+func sheetDrawings(t stopper, dir string) []dxf.Drawing {
 	t.Helper()
 	names, err := filepath.Glob(filepath.Join(dir, "*.dxf"))
 	if err != nil || len(names) == 0 {
@@ -79,7 +85,7 @@ func sheetDrawings(t testing.TB, dir string) []dxf.Drawing {
 	for i, name := range names {
 		data, err := os.ReadFile(name)
 		if err != nil {
-			t.Fatal(err)
+			t.Fatalf("%s: %v", name, err)
 		}
 		if out[i], err = dxf.Read(bytes.NewReader(data)); err != nil {
 			t.Fatalf("%s: %v", name, err)
