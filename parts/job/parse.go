@@ -28,7 +28,15 @@ func Read(path string) (Job, error) {
 }
 
 // readCapped reads a file, and no more of it than one byte above the cap: enough to refuse it.
+// Pipes and devices are refused: a read of them may never come back.
 func readCapped(path string, most int64) ([]byte, error) {
+	info, err := os.Stat(path)
+	if err != nil {
+		return nil, err
+	}
+	if !info.Mode().IsRegular() && !info.IsDir() { // reading a directory fails in the system's words
+		return nil, fmt.Errorf("%s: not a plain file", path)
+	}
 	f, err := os.Open(path)
 	if err != nil {
 		return nil, err
@@ -110,6 +118,7 @@ func (r *reader) build(v *value) Job {
 	j.Copies = r.copies(v.get("copies"))
 	j.Body = r.body(v.get("body"), &j)
 	j.Pins = r.pins(v.get("pins"), v.at, &j)
+	r.passing(v.get("linkage").get("links"), &j)
 	j.Spare = Spare{Percent: v.get("spare").get("percent").numberOr(0), Least: int(v.get("spare").get("least").numberOr(0))}
 	return j
 }

@@ -164,12 +164,12 @@ func drawLinkage(t *rapid.T, j *Job) {
 		}
 		switch rapid.IntRange(0, 4).Draw(t, "bore") {
 		case 1:
-			b.Bores = []Bore{{Joint: last, Kind: RoundBore, Diameter: mm(t, 1, 9, "d")}}
+			b.Bores = []Bore{{Joint: last, Kind: RoundBore, Diameter: mm(t, 10, 15, "d")}}
 		case 2:
-			d := mm(t, 2, 9, "d")
-			b.Bores = []Bore{{Joint: last, Kind: DBore, Diameter: d, Flat: d * 0.9}, {Joint: next, Kind: HexagonBore, Across: mm(t, 3, 9, "across")}}
+			d := mm(t, 10, 15, "d")
+			b.Bores = []Bore{{Joint: last, Kind: DBore, Diameter: d, Flat: d * 0.9}, {Joint: next, Kind: HexagonBore, Across: mm(t, 10, 15, "across")}}
 		case 3:
-			b.Bores = []Bore{{Joint: next, Kind: HubBore, Diameter: 6, Bolts: 4, Circle: mm(t, 16, 30, "circle"), Hole: 3.4}}
+			b.Bores = []Bore{{Joint: next, Kind: HubBore, Diameter: 10, Bolts: 4, Circle: mm(t, 20, 30, "circle"), Hole: 3.4}}
 		}
 		l.Links = append(l.Links, link)
 		j.Links = append(j.Links, b)
@@ -211,7 +211,7 @@ func drawPin(t *rapid.T, joint string, on []string) Pin {
 		p.Bearing, p.Bolt, p.Seats = "624", "M4", on[:1]
 		p.Fit = rapid.SampledFrom(append([]string{"H7", "N7"}, plainFits...)).Draw(t, "fit")
 	default:
-		p.Shaft, p.Fit = mm(t, 1, 20, "shaft"), rapid.SampledFrom(plainFits).Draw(t, "fit")
+		p.Shaft, p.Fit = mm(t, 1, 10, "shaft"), rapid.SampledFrom(plainFits).Draw(t, "fit")
 	}
 	if rapid.Bool().Draw(t, "explicit") {
 		c := mm(t, -0.5, 0.5, "clearance")
