@@ -77,6 +77,7 @@ func (p plan) print(w io.Writer, gaps []assembly.Gap) {
 			fmt.Fprintf(w, "%-13s %s: %s\n", "pin", k.Joint, kitWords(k))
 		}
 	}
+	gaps = nearest(gaps)
 	for i, g := range gaps {
 		if i == shownGaps {
 			fmt.Fprintf(w, "%-13s and %d more, all wider\n", "", len(gaps)-i)
@@ -136,10 +137,10 @@ func (p plan) adjustable() []string {
 	return out
 }
 
-// clashes is an error that names everything that touches.
+// clashes is an error that names everything that touches, a pin and all that is on it once.
 func (p plan) clashes(gaps []assembly.Gap) error {
 	var faults []error
-	for _, g := range gaps {
+	for _, g := range nearest(gaps) {
 		if g.MM > 0 {
 			break
 		}

@@ -5,6 +5,8 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"slices"
+	"strings"
 
 	"pinwright/export"
 	"pinwright/kerf"
@@ -152,12 +154,23 @@ func shelf(j job.Job) []nest.Stock {
 	return out
 }
 
-// leftovers is an error that names every part that found no room and what it would need.
+// leftovers is an error that names every part that found no room and what it would need; parts that want
+// the same are named together.
 func leftovers(j job.Job, items []nest.Item, l nest.Layout) error {
 	var faults []error
-	for _, left := range l.Left {
-		name := items[left.Item].Stock
-		faults = append(faults, fmt.Errorf("%s: %s: %s", j.At("stock."+name), items[left.Item].Name, left.Why))
+	for i, left := range l.Left {
+		stock := items[left.Item].Stock
+		alike := func(o nest.Leftover) bool { return o.Why == left.Why && items[o.Item].Stock == stock }
+		if slices.ContainsFunc(l.Left[:i], alike) {
+			continue
+		}
+		var names []string
+		for _, o := range l.Left[i:] {
+			if alike(o) {
+				names = append(names, items[o.Item].Name)
+			}
+		}
+		faults = append(faults, fmt.Errorf("%s: %s: %s", j.At("stock."+stock), strings.Join(names, ", "), left.Why))
 	}
 	return errors.Join(faults...)
 }
