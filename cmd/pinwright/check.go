@@ -145,11 +145,20 @@ func (p plan) clashes(gaps []assembly.Gap) error {
 			break
 		}
 		faults = append(faults, p.job.Fault(p.pathOf(g),
-			fmt.Sprintf("%s and %s touch at drive angle %.1f deg%s, near (%.1f, %.1f) in the linkage, at heights %.1f to %.1f mm",
-				g.A, g.B, degrees(g.Angle), p.settingWords(g), g.At.X, g.At.Y, g.Low, g.Up),
+			fmt.Sprintf("%s and %s touch at drive angle %.1f deg%s, near (%.1f, %.1f) in the linkage, at %s",
+				g.A, g.B, degrees(g.Angle), p.settingWords(g), g.At.X, g.At.Y, heights(g.Low, g.Up)),
 			"put one of them on another plane, make it slimmer, or bend it out of the way"))
 	}
 	return errors.Join(faults...)
+}
+
+// heights says over which height of the side view things touch; faces that rub have one.
+func heights(low, up float64) string {
+	a, b := fmt.Sprintf("%.1f", low), fmt.Sprintf("%.1f", up)
+	if a == b {
+		return "height " + a + " mm"
+	}
+	return "heights " + a + " to " + b + " mm"
 }
 
 // pathOf is the key path of a link or plate that takes part in a gap.

@@ -20,7 +20,8 @@ import (
 type wild struct {
 	text                   string
 	crank, coupler, rocker float64
-	ground                 float64 // between the pivots; 0: there is no frame
+	ground                 float64 // between the pivots; 0: there is no frame, or a slot in it
+	flat                   bool    // the crank's bore has a flat: it is no circle
 	copies                 int
 	hole                   float64 // finished diameter at joint A
 	kerf                   float64
@@ -78,13 +79,24 @@ func wildJob(t *rapid.T) wild {
 	var y strings.Builder
 	line := func(format string, args ...any) { fmt.Fprintf(&y, format+"\n", args...) }
 	line("job: wild\nunits: {length: mm, angle: deg}\nlinkage:\n  joints:")
-	line("    O: {ground: [0, 0]}\n    D: {ground: [%g, %g]}", d.X, d.Y)
+	pivot := fmt.Sprintf("[%g, %g]", d.X, d.Y)
+	slot := rapid.IntRange(0, 5).Draw(t, "slot") == 0
+	if slot {
+		reach := mm("reach", 0.5, 4)
+		pivot = fmt.Sprintf("{from: [%.2f, %g], to: [%.2f, %[2]g], at: [%[4]g, %[2]g]}", d.X-reach, d.Y, d.X+reach, d.X)
+	}
+	line("    O: {ground: [0, 0]}\n    D: {ground: %s}", pivot)
 	for i, n := range []outline.Point{a, b, p} {
 		line("    %s: {near: [%.1f, %.1f]}", []string{"A", "B", "P"}[i], n.X, n.Y)
 	}
 	line("  links:")
-	line("    crank: {pins: [O, A], length: %g, drive: full-turn, plane: 2, shape: %s}", w.crank,
-		pick("crank's shape", "crank-arm", "crank-arm, phase-mark: true", "bar", "disc, phase-mark: true"))
+	w.flat = !often("round bore")
+	bores, shaft := "", pick("shaft", "4", "5", "6")
+	if w.flat {
+		bores, shaft = ", bores: {O: {d: 6, flat: 5.5}}", "6"
+	}
+	line("    crank: {pins: [O, A], length: %g, drive: full-turn, plane: 2, shape: %s%s}", w.crank,
+		pick("crank's shape", "crank-arm", "crank-arm, phase-mark: true", "bar", "disc, phase-mark: true"), bores)
 	line("    coupler: {pins: [A, B, P], lengths: {A-B: %g, B-P: %g, A-P: %g}, plane: 3, shape: %s, foot: {at: P, radius: %g}}",
 		w.coupler, bp, ap, pick("coupler's shape", "plate", "spider", "plate, windows: true", "spider, fillet: 4"), mm("toe", 6, 14))
 	plane, shape := 4, pick("rocker's shape", "bar", "waisted", "bent, bend: 6")
@@ -97,10 +109,16 @@ func wildJob(t *rapid.T) wild {
 	line("    rocker: {pins: [D, B], length: %g, plane: %d, shape: %s}", w.rocker, plane, shape)
 	line("  trace: [P]")
 	if often("frame") {
-		w.ground = ground
+		if !slot {
+			w.ground = ground
+		}
 		line("frame:\n  plates:\n    back: {plane: 0}")
 		if !often("one plate") {
 			line("    front: {plane: 6, pivots: [D]}")
+			if rapid.Bool().Draw(t, "cross member") {
+				line("  cross: [{at: [%g, %g], width: %g, angle: %g, tabs: %d}]", d.X+mm("cross x", -20, 60), d.Y+mm("cross y", -60, 60),
+					mm("cross width", 25, 40), mm("cross angle", 0, 180), rapid.IntRange(1, 2).Draw(t, "tabs"))
+			}
 		}
 	}
 	w.copies = 1
@@ -113,7 +131,7 @@ func wildJob(t *rapid.T) wild {
 		line("copies: [{name: left}, {name: right, mirror: true, phase: %g}]", mm("phase", 0, 350))
 	}
 	line("pins:\n  default: {bolt: %s, fit: %s}", bolt, []string{"fine", "medium", "coarse"}[fit])
-	line("  O: {shaft: %s, fit: push}", pick("shaft", "4", "5", "6"))
+	line("  O: {shaft: %s, fit: push}", shaft)
 	if !often("no bearing") {
 		line("  B: {bearing: %s, fit: press, in: [%s]}", pick("bearing", "623", "624", "MR105"), pick("seat", "rocker", "coupler"))
 	}
@@ -186,6 +204,9 @@ func (w wild) measure(t *rapid.T, dir string) {
 			if atA || name == "rocker" || name == "ground" {
 				found++
 			}
+		}
+		if name == "crank" && w.flat {
+			continue
 		}
 		if want > 0 && found < w.copies {
 			t.Fatalf("%s: %d pairs of holes are %g mm apart, want %d, in\n%s", name, found, want, w.copies, w.text)
