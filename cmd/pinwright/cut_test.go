@@ -34,6 +34,9 @@ func TestCutDemo(t *testing.T) {
 		t.Errorf("%d files, want %d", len(got), len(want))
 	}
 	fine(t, "proof", dir)
+	if said := fine(t, "check", jobs+"demo.yaml"); !strings.Contains(said, "24 in 4 copies, all can be cut") || !strings.Contains(said, "it goes together") {
+		t.Errorf("check says\n%s", said)
+	}
 }
 
 // The same job gives the same bytes: again into the same directory, into another, on one core and on several.
