@@ -90,7 +90,11 @@ func (p plan) print(w io.Writer, gaps []assembly.Gap) {
 		fmt.Fprintf(w, "%-13s %.2f mm between %s and %s, drive %.1f deg%s%s\n", "gap", g.MM, g.A, g.B, degrees(g.Angle), p.settingWords(g), note)
 	}
 	if len(p.parts) > 0 {
-		fmt.Fprintf(w, "%-13s %d in %d copies, all can be cut\n", "parts", len(p.parts), len(p.job.Copies))
+		copies := "one copy"
+		if n := len(p.job.Copies); n > 1 {
+			copies = fmt.Sprintf("%d copies", n)
+		}
+		fmt.Fprintf(w, "%-13s %d in %s, all can be cut\n", "parts", len(p.parts), copies)
 	}
 }
 
