@@ -67,8 +67,10 @@ func (p plan) pictures() ([]files.File, error) {
 }
 
 // sideKey explains the side view, in so many lines on a page.
-const sideKeyLines = 3
-const sideKey = "To the left of each pin are its dimensions in mm: the length of the bolt or shaft; next to it what is clamped, from the head to the nut, then the nut and the thread past it. To the right is what is on the pin, with thicknesses."
+const (
+	sideKeyLines = 3
+	sideKey      = "To the left of each pin are its dimensions in mm: the length of the bolt or shaft; next to it what is clamped, from the head to the nut, then the nut and the thread past it. To the right is what is on the pin, with thicknesses."
+)
 
 // sideKits are the kits of the first copy as pieces to be drawn; all copies carry the same.
 func (p plan) sideKits(order assembling) []picture.Kit {
