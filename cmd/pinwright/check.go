@@ -72,6 +72,9 @@ func (p plan) print(w io.Writer, gaps []assembly.Gap) {
 	if p.motion.cycle != nil {
 		printMotion(w, p.job, p.motion)
 	}
+	if p.found != nil {
+		p.found.print(w)
+	}
 	for _, k := range p.kits {
 		if k.Copy == p.job.Copies[0].Name {
 			fmt.Fprintf(w, "%-13s %s: %s\n", "pin", k.Joint, kitWords(k))

@@ -22,6 +22,7 @@ type plan struct {
 	job    job.Job
 	sum    string // SHA-256 of the job file
 	motion motion
+	found  *arrangement // of the planes that the job leaves open; nil when it gives them all
 	levels []stack.Level
 	kits   []stack.Kit
 	lines  []stack.Line
@@ -39,6 +40,10 @@ func buildable(j job.Job) (plan, error) {
 	if p.motion, err = solve(j); err != nil {
 		return p, err
 	}
+	if err = p.findPlanes(); err != nil {
+		return p, err
+	}
+	j = p.job
 	var faults []error
 	if p.levels, err = stack.Levels(j); err != nil {
 		return p, err

@@ -6,6 +6,7 @@ type Conflict struct {
 	Apart   []Apart
 	Swept   []Swept
 	Close   []Close
+	Short   []Short
 	Demands []Demand
 	problem Problem
 }
@@ -13,10 +14,9 @@ type Conflict struct {
 // explain finds a smallest set of rules that contradict each other in a problem without an answer.
 //
 // Rules are taken away in halves, quarters and so on down to single ones, as long as there is no answer
-// without them; a last pass goes through those left one by one. Demands are tried last: what the job asks
-// for is kept in the explanation only if it takes part.
+// without them; a last pass goes through those left one by one.
 func explain(p Problem) *Conflict {
-	rules := len(p.Apart) + len(p.Swept) + len(p.Close) + len(p.Demands)
+	rules := len(p.Apart) + len(p.Swept) + len(p.Close) + len(p.Short) + len(p.Demands)
 	keep := make([]bool, rules)
 	for i := range keep {
 		keep[i] = true
@@ -38,11 +38,10 @@ func explain(p Problem) *Conflict {
 		}
 	}
 	q := p.with(keep)
-	return &Conflict{Apart: q.Apart, Swept: q.Swept, Close: q.Close, Demands: q.Demands, problem: p}
+	return &Conflict{Apart: q.Apart, Swept: q.Swept, Close: q.Close, Short: q.Short, Demands: q.Demands, problem: p}
 }
 
-// with returns the problem with those rules only that are kept, in the order demands, close, apart, swept
-// from the last to the first to be tried.
+// with returns the problem with those rules only that are kept, the first to be tried first.
 func (p Problem) with(keep []bool) Problem {
 	q := p
 	q.Close = kept(p.Close, keep)
@@ -51,6 +50,8 @@ func (p Problem) with(keep []bool) Problem {
 	keep = keep[len(p.Apart):]
 	q.Swept = kept(p.Swept, keep)
 	keep = keep[len(p.Swept):]
+	q.Short = kept(p.Short, keep)
+	keep = keep[len(p.Short):]
 	q.Demands = kept(p.Demands, keep)
 	return q
 }
@@ -65,6 +66,9 @@ func kept[T any](list []T, keep []bool) []T {
 	return out
 }
 
+// feasibleStates bounds the search for any answer at all, of which an explanation needs one for every rule.
+const feasibleStates = 20_000
+
 // solvable tells whether a problem has an answer. A search without a result in the states allowed counts as
 // one: then a rule stays that might go.
 func solvable(p Problem) bool {
@@ -72,15 +76,58 @@ func solvable(p Problem) bool {
 	if err != nil {
 		return true
 	}
-	if m.isFixed == 0 {
-		return m.finishable()
+	if !m.finishable() {
+		return false
 	}
-	limit := p.States
-	if limit <= 0 {
-		limit = 400_000
+	if m.isFixed == 0 && len(p.Short) == 0 {
+		return true
 	}
-	s := newSearch(m)
-	return s.run(limit) != nil || s.open.Len() > 0
+	found, sure := m.any(len(p.Short) == 0)
+	return found || !sure
+}
+
+// any looks for an answer depth first. It is sure of having found none when it went through all states.
+// When no pin is held short, a side view that is further back has all the possibilities of the same one
+// further in front: empty planes only make room.
+func (m *model) any(roomy bool) (found, sure bool) {
+	s := &search{m: m, finish: newFinish(m)}
+	seen := map[string]int{}
+	sure = true
+	var down func(x *state)
+	visit := func(x *state) {
+		if found || !sure || s.finish.from(x.placed) == impossible {
+			return
+		}
+		key := m.future(x)
+		if !roomy {
+			key = m.key(x)
+		}
+		if plane, ok := seen[key]; ok && plane <= x.plane {
+			return
+		}
+		if len(seen) >= feasibleStates {
+			sure = false
+			return
+		}
+		seen[key] = x.plane
+		down(x)
+	}
+	down = func(x *state) {
+		if x.placed == m.all {
+			found = true
+			return
+		}
+		s.expand(x, visit)
+	}
+	root := m.root()
+	for _, plane := range m.starts() {
+		m.layers(m.ready(0, 0), func(next set) {
+			if x := m.put(root, next, plane, 0); x != nil {
+				visit(x)
+			}
+		})
+	}
+	return found, sure
 }
 
 // finishable tells whether all bodies can be placed when planes are free: then heads and nuts can have the

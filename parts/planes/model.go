@@ -23,6 +23,8 @@ type axle struct {
 	swept        [3]set    // by own zone: bodies that must not be there
 	close        [3][3]set // by own zone and zone of the other: pins
 	below, above length
+	longest      length // from first to last member; 0: any
+	shortest     length
 	free, loaded bool
 }
 
@@ -78,7 +80,7 @@ func newModel(p Problem) (*model, error) {
 		m.group[i] = 1 << i
 	}
 	for _, x := range p.Pins {
-		a := axle{below: micrometres(x.Below), above: micrometres(x.Above), free: x.Free, loaded: x.Loaded}
+		a := axle{below: micrometres(x.Below), above: micrometres(x.Above), shortest: micrometres(x.Least), free: x.Free, loaded: x.Loaded}
 		for _, b := range x.Members {
 			if err := body(b); err != nil {
 				return nil, err
@@ -119,6 +121,15 @@ func newModel(p Problem) (*model, error) {
 		m.pins[x.Q].close[x.ZoneQ][x.ZoneP] |= 1 << x.P
 		if x.ZoneP == Shank && x.ZoneQ == Shank {
 			m.keepApart(m.pins[x.P].members, m.pins[x.Q].members)
+		}
+	}
+	for _, x := range p.Short {
+		if err := pin(x.Pin); err != nil {
+			return nil, err
+		}
+		v := max(1, micrometres(x.MM)) // nothing is thinner than that
+		if a := &m.pins[x.Pin]; a.longest == 0 || v < a.longest {
+			a.longest = v
 		}
 	}
 	for _, d := range p.Demands {

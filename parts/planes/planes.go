@@ -60,6 +60,7 @@ type Pin struct {
 	Members []int   // bodies on it, at least one; no two of them share a plane
 	Below   float64 // how far head and washer reach behind the first member
 	Above   float64 // how far washer, nut and tip reach in front of the last
+	Least   float64 // how long it must be at least, from the back of its first member to the front of its last
 	Free    bool    // its length costs nothing: not a pin but a spacer of the frame
 	Loaded  bool    // planes between its members count as overhang
 }
@@ -91,6 +92,13 @@ type Close struct {
 	Near
 }
 
+// Short says that a pin comes no longer than this from the back of its first member to the front of its
+// last.
+type Short struct {
+	Pin int
+	MM  float64
+}
+
 // DemandKind is what a job may demand of a body's plane.
 type DemandKind int
 
@@ -115,6 +123,7 @@ type Problem struct {
 	Apart   []Apart
 	Swept   []Swept
 	Close   []Close
+	Short   []Short
 	Demands []Demand
 	Washer  float64 // gap between neighbouring planes
 	Clear   float64 // what must be left in height between a head or nut and what passes it
@@ -133,7 +142,8 @@ type Cost struct {
 
 // Answer is an assignment of planes.
 type Answer struct {
-	Planes []int // by body
+	Planes []int     // by body
+	Spans  []float64 // by pin: from the back of its first member to the front of its last
 	Cost   Cost
 	Proven bool // no assignment costs less
 	Bound  Cost // no assignment costs less than this; equal to Cost when Proven

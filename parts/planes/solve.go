@@ -19,6 +19,9 @@ func Solve(p Problem) (Answer, error) {
 	if limit <= 0 {
 		limit = 400_000
 	}
+	if !solvable(p) {
+		return Answer{}, explain(p)
+	}
 	s := newSearch(m)
 	end := s.run(limit)
 	if end == nil && s.open.Len() == 0 {
@@ -43,7 +46,30 @@ func Solve(p Problem) (Answer, error) {
 	for x := end; x != nil; x = x.before {
 		each(x.layer, func(b int) { out.Planes[b] = x.plane + lift })
 	}
+	out.Spans = m.spans(end)
 	return out, nil
+}
+
+// spans measures the pins of a complete side view.
+func (m *model) spans(end *state) []float64 {
+	var way []*state
+	for x := end; x != nil; x = x.before {
+		way = append(way, x)
+	}
+	slices.Reverse(way)
+	out := make([]length, len(m.pins))
+	from := &state{}
+	for _, x := range way {
+		open, opening := m.open(from.placed), m.opening(from.placed, x.layer)
+		each(open, func(i int) { out[i] += m.gap(from, x.layer, x.plane-from.plane-1) + x.slab })
+		each(opening, func(i int) { out[i] += x.slab })
+		from = x
+	}
+	mm := make([]float64, len(out))
+	for i, v := range out {
+		mm[i] = float64(v) / 1000
+	}
+	return mm
 }
 
 // Unknown says that neither an answer nor a contradiction was found in the states allowed.
@@ -66,6 +92,7 @@ type state struct {
 	body   []length // by body not placed: where it may begin at the lowest
 	begin  []length // by pin not begun: where it may begin at the lowest
 	end    []length // by pin not ended: where it may end at the lowest
+	since  []length // by open pin that has a least or a greatest length: where it began, below the top
 	spent  expense
 	total  expense // spent, and at least what is to come
 	number int     // of its making
@@ -104,34 +131,41 @@ type search struct {
 
 func newSearch(m *model) *search {
 	s := &search{m: m, finish: newFinish(m), seen: map[string]expense{}}
-	root := &state{body: make([]length, m.n), begin: make([]length, len(m.pins)), end: make([]length, len(m.pins))}
-	if m.isFixed == 0 {
-		s.begin(root, 0)
-		return s
-	}
-	// Where the side view begins below the lowest plane demanded is open; it never pays to begin lower
-	// than all other bodies below it could need.
-	for first := m.lowest - m.n*(1+m.mostEmpty()); first <= m.lowest; first++ {
-		s.begin(root, first)
+	root := m.root()
+	for _, plane := range m.starts() {
+		m.layers(m.ready(0, 0), func(next set) {
+			if x := m.put(root, next, plane, 0); x != nil {
+				s.add(x)
+			}
+		})
 	}
 	return s
 }
 
-// begin makes the states with one plane.
-func (s *search) begin(root *state, plane int) {
-	m := s.m
-	m.layers(m.ready(0, 0), func(next set) {
-		if x := m.put(root, next, plane, 0); x != nil {
-			s.add(x)
-		}
-	})
+// root is the state with nothing placed.
+func (m *model) root() *state {
+	pins := len(m.pins)
+	return &state{body: make([]length, m.n), begin: make([]length, pins), end: make([]length, pins), since: make([]length, pins)}
+}
+
+// starts are the planes that the side view may begin on, the lowest first. When none is demanded it is 0;
+// else it never pays to begin lower than all other bodies behind the lowest one demanded could need.
+func (m *model) starts() []int {
+	if m.isFixed == 0 {
+		return []int{0}
+	}
+	var out []int
+	for plane := m.lowest - m.n*(1+m.mostEmpty()); plane <= m.lowest; plane++ {
+		out = append(out, plane)
+	}
+	return out
 }
 
 // mostEmpty is how many empty planes in a row can have a use: enough for the longest head or nut.
 func (m *model) mostEmpty() int {
 	var reach length
 	for i := range m.pins {
-		reach = max(reach, m.pins[i].below, m.pins[i].above)
+		reach = max(reach, m.pins[i].below, m.pins[i].above, m.pins[i].shortest)
 	}
 	return int((2*reach+2*m.clear)/(m.washer+m.thinnest)) + 1
 }
@@ -168,13 +202,19 @@ func (m *model) farthest(placed set) int {
 
 // key tells apart states with different futures.
 func (m *model) key(x *state) string {
-	key := binary.AppendUvarint(nil, x.placed)
+	key := m.future(x)
 	if m.isFixed&^x.placed != 0 {
-		key = binary.AppendVarint(key, int64(x.plane))
+		key = string(binary.AppendVarint([]byte(key), int64(x.plane)))
 	}
+	return key
+}
+
+// future is what decides what can follow on a state but for the number of its plane.
+func (m *model) future(x *state) string {
+	key := binary.AppendUvarint(nil, x.placed)
 	key = binary.AppendVarint(key, x.slab)
 	key = binary.AppendVarint(key, x.room)
-	for _, list := range [][]length{x.body, x.begin, x.end} {
+	for _, list := range [][]length{x.body, x.begin, x.end, x.since} {
 		for _, v := range list {
 			key = binary.AppendVarint(key, v)
 		}
@@ -275,7 +315,7 @@ func (s *search) expand(x *state, add func(*state)) {
 			}
 			// More empty planes are of use only as long as something still reaches up here, or to come
 			// to a plane that is demanded.
-			if m.gap(x, next, empty) >= x.reach() && m.farthest(x.placed) <= x.plane+1+empty {
+			if gap := m.gap(x, next, empty); gap >= x.reach() && gap >= m.lacking(x) && m.farthest(x.placed) <= x.plane+1+empty {
 				break
 			}
 		}
@@ -290,6 +330,13 @@ func (x *state) reach() length {
 			out = max(out, v)
 		}
 	}
+	return out
+}
+
+// lacking is the greatest length that an open pin has yet to reach.
+func (m *model) lacking(x *state) length {
+	var out length
+	each(m.open(x.placed), func(i int) { out = max(out, m.pins[i].shortest-x.since[i]) })
 	return out
 }
 
@@ -322,11 +369,16 @@ func (m *model) put(x *state, next set, plane, empty int) *state {
 	if !m.fits(x, next, open, opening, closing, stay, gap, top) {
 		return nil
 	}
-	y := &state{placed: placed, plane: plane, layer: next, slab: m.slab(next), body: make([]length, m.n), begin: make([]length, len(m.pins)), end: make([]length, len(m.pins))}
+	y := &state{placed: placed, plane: plane, layer: next, slab: m.slab(next), body: make([]length, m.n), begin: make([]length, len(m.pins)), end: make([]length, len(m.pins)), since: make([]length, len(m.pins))}
 	if x.placed != 0 {
 		y.before = x
 	}
 	y.spent = x.spent.add(m.step(open, opening, next, gap, empty))
+	each(stay, func(i int) {
+		if a := &m.pins[i]; a.longest > 0 || a.shortest > 0 {
+			y.since[i] = m.since(x, i, open, gap, top)
+		}
+	})
 	each(closing, func(i int) { y.room = max(y.room, m.pins[i].above+m.clear) })
 	if placed == m.all {
 		return y
@@ -362,7 +414,19 @@ func (m *model) fits(x *state, next, open, opening, closing, stay set, gap, top 
 	each(next, func(b int) { ok = ok && x.body[b] <= gap })
 	each(opening, func(i int) { ok = ok && x.begin[i] <= gap })
 	each(closing, func(i int) { ok = ok && x.end[i] <= top })
+	each(open|opening, func(i int) {
+		a, long := &m.pins[i], m.since(x, i, open, gap, top)
+		ok = ok && (a.longest == 0 || long <= a.longest) && (stay>>i&1 == 1 || long >= a.shortest)
+	})
 	return ok
+}
+
+// since is how far below the top of the next plane a pin began.
+func (m *model) since(x *state, pin int, open set, gap, top length) length {
+	if open>>pin&1 == 1 {
+		return x.since[pin] + top
+	}
+	return top - gap
 }
 
 // clash tells whether pins come too near to each other on a plane whatever the heights are: heads of those

@@ -6,10 +6,16 @@ import (
 	"strings"
 )
 
-// Error says what contradicts what, a rule a line, and what would help.
-func (c *Conflict) Error() string {
-	return "no planes fit, because\n  " + strings.Join(c.Rules(), "\n  and ") + "\nwhat would help, any one of these:\n  " + strings.Join(c.Help(), "\n  ")
+// Error says what contradicts what, and what would help.
+func (c *Conflict) Error() string { return c.Message() + "\n  " + c.Hint() }
+
+// Message says what contradicts what.
+func (c *Conflict) Message() string {
+	return "no planes fit: " + strings.Join(c.Rules(), ", and ")
 }
+
+// Hint says what would help: any one of its parts.
+func (c *Conflict) Hint() string { return strings.Join(c.Help(), "; or ") }
 
 // Rules says each rule in words.
 func (c *Conflict) Rules() []string {
@@ -20,13 +26,16 @@ func (c *Conflict) Rules() []string {
 		say("%s", p.demandWords(d))
 	}
 	for _, x := range c.Apart {
-		say("%s and %s cannot share a plane (%s)", p.Bodies[x.A].Name, p.Bodies[x.B].Name, x.words())
+		say("%s and %s cannot share a plane (%s)", p.Bodies[x.A].Name, p.Bodies[x.B].Name, c.gap(x.Near))
 	}
 	for _, x := range c.Swept {
-		say("%s cannot lie %s %s, whose %s it sweeps across (%s)", p.Bodies[x.Body].Name, where[x.Zone], p.Pins[x.Pin].Name, x.Zone, x.words())
+		say("%s cannot lie %s %s, whose %s it sweeps across (%s)", p.Bodies[x.Body].Name, where[x.Zone], p.Pins[x.Pin].Name, x.Zone, c.gap(x.Near))
 	}
 	for _, x := range c.Close {
-		say("the %s of %s and the %s of %s cannot be at one height (%s)", x.ZoneP, p.Pins[x.P].Name, x.ZoneQ, p.Pins[x.Q].Name, x.words())
+		say("the %s of %s and the %s of %s cannot be at one height (%s)", x.ZoneP, p.Pins[x.P].Name, x.ZoneQ, p.Pins[x.Q].Name, c.gap(x.Near))
+	}
+	for _, x := range c.Short {
+		say("what holds %s together is too short for more than %.1f mm of parts and spacers", p.Pins[x.Pin].Name, x.MM)
 	}
 	return out
 }
@@ -44,9 +53,13 @@ func (p Problem) demandWords(d Demand) string {
 	return fmt.Sprintf("%s is to lie in front of %s", a, b)
 }
 
-// words says the gap and where it is.
-func (n Near) words() string {
-	return fmt.Sprintf("gap %.1f mm at %.0f deg", n.MM, math.Mod(n.Angle*180/math.Pi+360, 360))
+// gap says the gap and where it is.
+func (c *Conflict) gap(n Near) string {
+	wanted := ""
+	if n.MM > -0.05 {
+		wanted = fmt.Sprintf(", %.1f mm wanted", c.problem.Clear)
+	}
+	return fmt.Sprintf("gap %.1f mm at %.0f deg%s", n.MM, math.Mod(n.Angle*180/math.Pi+360, 360), wanted)
 }
 
 // short is how much is missing, rounded up to a tenth.
@@ -77,6 +90,9 @@ func (c *Conflict) Help() []string {
 	}
 	for _, x := range c.Close {
 		say("make the pins %s and %s slimmer by %.1f mm together", p.Pins[x.P].Name, p.Pins[x.Q].Name, c.short(x.Near))
+	}
+	for _, x := range c.Short {
+		say("take a thicker bolt at %s, which comes longer", p.Pins[x.Pin].Name)
 	}
 	return out
 }
