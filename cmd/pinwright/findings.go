@@ -17,6 +17,7 @@ type findings struct {
 	Transmission []transmission `json:"transmission"`
 	Toggles      []toggle       `json:"toggles"`
 	Paths        []path         `json:"paths"`
+	Planes       *planesFinding `json:"planes,omitempty"` // when the job leaves some open
 	Pins         []pinFinding   `json:"pins"`
 	Gaps         []gap          `json:"gaps"`
 	Body         *body          `json:"body,omitempty"`
@@ -40,6 +41,16 @@ type path struct {
 	Stride float64 `json:"stride"`
 	Lift   float64 `json:"lift"`
 	Length float64 `json:"length"`
+}
+
+// planesFinding is the planes that were found, by part, and what is proven: no fewer planes than Least.
+type planesFinding struct {
+	Of     map[string]int `json:"of"`
+	Planes int            `json:"planes"`
+	Least  int            `json:"least"`
+	Length float64        `json:"length"`
+	Proven bool           `json:"proven"`
+	For    []string       `json:"for,omitempty"` // pins whose bolts are reckoned with as long as they are
 }
 
 type pinFinding struct {
@@ -88,6 +99,7 @@ func (p plan) findings(gaps []assembly.Gap, err error) findings {
 		f.Error = err.Error()
 	}
 	f.motion(r.Set)
+	f.Planes = p.found.finding()
 	for _, k := range p.kits {
 		pin := pinFinding{Copy: k.Copy, Joint: k.Joint, Bolt: k.Through.Designation, Stack: []string{}, Play: k.Play}
 		for _, e := range k.Elements {

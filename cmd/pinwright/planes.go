@@ -108,3 +108,19 @@ func (a *arrangement) reasons(w io.Writer) {
 		fmt.Fprintf(w, "%-13s and %d more\n", "", n-shownGaps)
 	}
 }
+
+// finding is the arrangement for machines.
+func (a *arrangement) finding() *planesFinding {
+	if a == nil {
+		return nil
+	}
+	r := a.result
+	out := &planesFinding{
+		Of: map[string]int{}, Planes: r.Answer.Cost.Planes, Least: r.Answer.Bound.Planes, Length: r.Answer.Cost.Length,
+		Proven: r.Answer.Proven, For: r.Raised,
+	}
+	for i, b := range r.Problem.Bodies {
+		out.Of[b.Name] = r.Answer.Planes[i]
+	}
+	return out
+}

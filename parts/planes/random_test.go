@@ -280,6 +280,30 @@ func TestAgainstExhaustiveSearchOfFive(t *testing.T) {
 	})
 }
 
+func TestAgainstExhaustiveSearchOfSix(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		if rapid.IntRange(0, 19).Draw(t, "one in twenty") == 0 {
+			checkAgainstAll(t, aProblem(t, 6, false), 0, 6)
+		}
+	})
+}
+
+// What is drawn has answers often enough for the comparison to mean something.
+func TestDrawnProblemsHaveAnswers(t *testing.T) {
+	all, answered := 0, 0
+	rapid.Check(t, func(t *rapid.T) {
+		p := aProblem(t, rapid.IntRange(3, 6).Draw(t, "bodies"), false)
+		a, err := Solve(p)
+		all++
+		if err == nil && a.Cost.Planes > 1 {
+			answered++
+		}
+	})
+	if answered < all/10 {
+		t.Errorf("%d of %d have an answer of more than one plane", answered, all)
+	}
+}
+
 func TestDemandsAgainstExhaustiveSearch(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		n := rapid.IntRange(1, 4).Draw(t, "bodies")
