@@ -130,6 +130,10 @@ func (m *model) any(roomy bool) (found, sure bool) {
 	return found, sure
 }
 
+// finishableSets bounds the sets that finishable looks at: all of them up to 18 bodies. Beyond it takes a
+// problem for one that can be finished.
+const finishableSets = 1 << 18
+
 // finishable tells whether all bodies can be placed when planes are free: then heads and nuts can have the
 // height they need in empty planes, and only sets and their order count. Unless heads or nuts of two pins
 // come near each other, bodies that share a plane may as well lie on planes of their own, in any order.
@@ -142,7 +146,7 @@ func (m *model) finishable() bool {
 	dead := map[set]bool{}
 	var down func(placed set) bool
 	down = func(placed set) bool {
-		if placed == m.all {
+		if placed == m.all || len(dead) > finishableSets {
 			return true
 		}
 		if dead[placed] {
