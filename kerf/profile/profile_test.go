@@ -87,8 +87,11 @@ func TestSuits(t *testing.T) {
 		warning   string
 		err       string
 	}{
-		{"cast acrylic", 2.9, "", ""}, {"PMMA", 3, "", ""}, {"cast acrylic", 3.5, "kerf and taper differ", ""},
-		{"cast acrylic", 6, "", "cut a coupon of it"}, {"birch plywood", 2.9, "", "the profile is of cast acrylic, the sheet is birch plywood"},
+		{"cast acrylic", 2.9, "", ""},
+		{"PMMA", 3, "", ""},
+		{"cast acrylic", 3.5, "kerf and taper differ", ""},
+		{"cast acrylic", 6, "", "cut a coupon of it"},
+		{"birch plywood", 2.9, "", "the profile is of cast acrylic, the sheet is birch plywood"},
 	} {
 		w, err := p.Suits(c.material, c.thickness)
 		if (w == "") != (c.warning == "") || !strings.Contains(w, c.warning) || (err == nil) != (c.err == "") || err != nil && !strings.Contains(err.Error(), c.err) {
