@@ -14,8 +14,9 @@ import (
 // holeFor returns the hole that a pin asks for in a link or frame plate, about the origin: the seat of
 // a bearing where it sits, else the clearance hole of the bolt or the fit of the shaft. The bolt
 // through a bearing has the closest clearance hole in the other parts (fine, close): they are clamped, so
-// that hole alone holds their place, and the pin's fit is the bearing's.
-func holeFor(p job.Pin, part string) (drilling, error) {
+// that hole alone holds their place, and the pin's fit is the bearing's. In a plate of the frame a shaft
+// always turns (hardware.PlateFit).
+func holeFor(p job.Pin, part string, plate bool) (drilling, error) {
 	spec := hardware.Spec{Fit: p.Fit, Clearance: p.Clearance}
 	kind := PinHole
 	switch {
@@ -31,6 +32,9 @@ func holeFor(p job.Pin, part string) (drilling, error) {
 		}
 	case p.Kind == job.ShaftPin:
 		spec.Kind, spec.Diameter = hardware.Shaft, p.Shaft
+		if plate {
+			spec.Fit, spec.Clearance = hardware.PlateFit(spec.Fit, spec.Clearance)
+		}
 	default:
 		spec.Kind, spec.Size = hardware.Bolt, p.Bolt
 	}

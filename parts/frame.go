@@ -43,7 +43,7 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 		if g == nil || pin == nil {
 			continue
 		}
-		d, err := holeFor(*pin, plate.Name)
+		d, err := holeFor(*pin, plate.Name, true)
 		if err != nil {
 			k.fail("pins."+joint, "", "%s: %v", plate.Name, err)
 			continue

@@ -37,7 +37,7 @@ func (k *maker) seats(l job.Link, pins []string, frame []outline.Point, axis str
 			s.round = true
 			s.wanted, s.least = r.bore(*b)
 		} else if p := k.pin(joint); p != nil {
-			h, err := holeFor(*p, l.Name)
+			h, err := holeFor(*p, l.Name, false)
 			if err != nil {
 				k.fail(s.path, "", "link %s: %v", l.Name, err)
 				continue

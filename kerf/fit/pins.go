@@ -3,6 +3,7 @@ package fit
 import (
 	"fmt"
 	"math"
+	"slices"
 
 	"pinwright/parts/hardware"
 	"pinwright/parts/job"
@@ -38,6 +39,10 @@ func Holes(j job.Job) ([]Hole, error) {
 			}
 		case job.ShaftPin:
 			specs = append(specs, hardware.Spec{Kind: hardware.Shaft, Diameter: p.Shaft, Fit: p.Fit, Clearance: p.Clearance})
+			if hardware.Tight(p.Fit, p.Clearance) && inPlate(j, p.Joint) {
+				loose, clearance := hardware.PlateFit(p.Fit, p.Clearance)
+				specs = append(specs, hardware.Spec{Kind: hardware.Shaft, Diameter: p.Shaft, Fit: loose, Clearance: clearance})
+			}
 		default:
 			specs = append(specs, hardware.Spec{Kind: hardware.Bolt, Size: p.Bolt, Fit: p.Fit, Clearance: p.Clearance})
 		}
@@ -154,4 +159,11 @@ func Stress(f Fit, sheet string, thickness float64) (p Press, ok bool) {
 	}
 	p, err := Lame(f.Pin.Most, 0, f.Pin.Most+2*rim, tight, e, steel)
 	return p, err == nil
+}
+
+// inPlate tells whether a plate of the frame carries a joint.
+func inPlate(j job.Job, joint string) bool {
+	return j.Frame != nil && slices.ContainsFunc(j.Frame.Plates, func(p job.FramePlate) bool {
+		return slices.Contains(p.Pivots, joint)
+	})
 }

@@ -143,14 +143,23 @@ func (f *fitting) shaft() error {
 	if !(f.pin.Shaft > 0) {
 		return fmt.Errorf("a shaft of %g mm", f.pin.Shaft)
 	}
-	tight := slices.Contains([]string{"push", "press", "K7", "M7", "N7", "P7"}, f.pin.Fit)
-	if f.pin.Clearance != nil {
-		tight = *f.pin.Clearance <= 0
-	}
-	if tight {
-		for i := range f.members {
+	tight := hardware.Tight(f.pin.Fit, f.pin.Clearance)
+	for i := range f.members {
+		// A plate of the frame lets the shaft turn, whatever the fit: see hardware.PlateFit.
+		if tight && !f.members[i].plate {
 			f.members[i].held = true
 		}
+	}
+	held := ""
+	for _, m := range f.members {
+		if !m.held {
+			continue
+		}
+		if held != "" {
+			return fmt.Errorf("%s and %s are both fast on the shaft, and they could not turn on each other: say fit: running, and give the one that the shaft drives a bore with a flat",
+				held, m.name)
+		}
+		held = m.name
 	}
 	err := f.washers(func(k hardware.WasherKind) (hardware.Washer, error) {
 		return hardware.ShaftWasher(k, f.pin.Shaft)

@@ -227,13 +227,19 @@ func TestShaft(t *testing.T) {
 	}{
 		// 8 collar, 0.2 play, 1.6 washer, 3, 1.6 washer, 3
 		{"running", "shaft collar for 6 mm shaft | ISO 7089 6 | back | ISO 7089 6 | crank : shaft 6 mm", 17.4},
-		{"push", "back | ISO 7089 6 | crank : shaft 6 mm", 7.6},
+		// The fit holds the crank; in the frame the shaft turns all the same.
+		{"push", "shaft collar for 6 mm shaft | ISO 7089 6 | back | ISO 7089 6 | crank : shaft 6 mm", 17.4},
 	} {
 		pin.Fit = c.fit
 		k := build(t, jobOf(links, []job.Pin{pin}, frame, sheet("s", 3.1, 3)))[0]
 		if got := brief(k); got != c.want || !near(k.Through.Length, c.length) {
 			t.Errorf("%s: %s, %g mm\n want %s, %g mm", c.fit, got, k.Through.Length, c.want, c.length)
 		}
+	}
+	two := append([]at{{name: "other", stock: "s", plane: 2, pins: []string{"G", "B"}}}, links...)
+	pin.Fit = "press"
+	if _, err := Build(jobOf(two, []job.Pin{pin}, frame, sheet("s", 3.1, 3))); err == nil || !strings.Contains(err.Error(), "both fast on the shaft") {
+		t.Errorf("two links fast on one shaft: %v", err)
 	}
 	links[0].bores = nil
 	pin.Fit = "running"
