@@ -81,6 +81,15 @@ func beam(s job.Stock) kerf.Beam {
 	return kerf.Beam{Width: s.Kerf}
 }
 
+// taken is what the beam takes away between the paths of two parts: the kerf; twice as much when the shop
+// moves the beam outwards from the finished edges that are drawn.
+func taken(s job.Stock) float64 {
+	if s.ByShop {
+		return 2 * s.Kerf
+	}
+	return s.Kerf
+}
+
 // stockNamed finds a stock by its name and its place in the list.
 func stockNamed(j job.Job, name string) (job.Stock, int) {
 	for i, s := range j.Stock {
@@ -104,7 +113,11 @@ func compensate(j job.Job, list []parts.Part) ([]kerf.Cut, error) {
 		}
 		s, _ := stockNamed(j, p.Stock)
 		var err error
-		if cuts[i], err = kerf.Compensate(p.Name, p.Region, names, beam(s)); err != nil && !told[p.Link] {
+		if cuts[i], err = kerf.Compensate(p.Name, p.Region, names, beam(s)); err == nil && s.ByShop {
+			// The shop's beam is no thinner than ours: what it cannot make is found here.
+			_, err = kerf.Compensate(p.Name, p.Region, names, kerf.Beam{Width: s.Kerf})
+		}
+		if err != nil && !told[p.Link] {
 			faults = append(faults, fmt.Errorf("%s: %w", j.At(cmp.Or(keyOf(j, p.Link), "frame.cross")), err))
 			told[p.Link] = true
 		}
@@ -153,7 +166,7 @@ func shelf(j job.Job) []nest.Stock {
 	for i, s := range j.Stock {
 		out[i] = nest.Stock{
 			Name: s.Name, Width: s.Width, Height: s.Height, Quantity: s.Quantity,
-			Margin: s.Margin, Web: s.Web, Kerf: beam(s).Width,
+			Margin: s.Margin, Web: s.Web, Kerf: taken(s),
 		}
 	}
 	return out

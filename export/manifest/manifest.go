@@ -74,10 +74,20 @@ type Stock struct {
 }
 
 // Beam returns the width for which the paths in the drawings are compensated: the kerf, or 0 when
-// the shop compensates. With 0, webs and margins are measured between finished edges.
+// the shop compensates.
 func (s Stock) Beam() float64 {
 	if s.ByShop {
 		return 0
+	}
+	return s.Kerf
+}
+
+// Taken returns what the beam takes away between the drawn lines of two parts, half of it beside each:
+// the kerf where the beam runs along the lines; twice the kerf where the shop moves it outwards by half of
+// that first.
+func (s Stock) Taken() float64 {
+	if s.ByShop {
+		return 2 * s.Kerf
 	}
 	return s.Kerf
 }

@@ -8,12 +8,12 @@ import (
 )
 
 // gaps measures the material left between cuts: between those of different parts it is the web,
-// within one part it is a wall. The beam takes half its width on either side of a path.
+// within one part it is a wall. The beam takes half its width on either side of its path, which is the
+// drawn line, or further out where the shop compensates.
 //
 // The cuts are swept from left to right; a pair is measured when its boxes come nearer than what is
 // asked for, or nearer than the least found so far.
 func (l *ledger) gaps(s *scene) {
-	beam := s.stock.Beam()
 	sorted := make([]int, len(s.cuts))
 	for i := range sorted {
 		sorted[i] = i
@@ -25,22 +25,22 @@ func (l *ledger) gaps(s *scene) {
 		a := &s.cuts[i]
 		for _, j := range sorted[n+1:] {
 			b := &s.cuts[j]
-			reach := math.Max(s.stock.Web+beam+gapSlack, math.Max(least[0], least[1]))
+			reach := math.Max(s.stock.Web+s.stock.Taken()+gapSlack, math.Max(least[0], least[1]))
 			if b.box.Min.X-a.box.Max.X > reach {
 				break
 			}
 			same := a.part == b.part && a.part >= 0
-			at, asked, check := 0, s.stock.Web, webs
+			at, asked, taken, check := 0, s.stock.Web, s.stock.Taken(), webs
 			if same {
-				at, asked, check = 1, 0, walls
+				at, asked, taken, check = 1, 0, s.stock.Beam(), walls
 			}
-			if a.box.Distance(b.box) > math.Max(asked+beam+gapSlack, least[at]) {
+			if a.box.Distance(b.box) > math.Max(asked+taken+gapSlack, least[at]) {
 				continue
 			}
 			nearest := outline.OutlineDistance(a.path, b.path)
 			least[at] = math.Min(least[at], nearest.Distance)
 			l.count(check, 1)
-			l.gap(check, nearest.Distance-beam, asked, s.file+" "+near(nearest.A))
+			l.gap(check, nearest.Distance-taken, asked, s.file+" "+near(nearest.A))
 			l.tight(s, a, b, same, nearest)
 		}
 	}
@@ -51,7 +51,10 @@ func (l *ledger) tight(s *scene, a, b *cut, same bool, nearest outline.Nearest) 
 	if a.turn > b.turn {
 		a, b = b, a
 	}
-	left := nearest.Distance - s.stock.Beam()
+	left := nearest.Distance - s.stock.Taken()
+	if same {
+		left = nearest.Distance - s.stock.Beam()
+	}
 	lines := "the cuts of lines " + plain(a.line) + " and " + plain(b.line)
 	switch {
 	case nearest.Distance <= gapSlack:
@@ -84,7 +87,7 @@ func (l *ledger) margin(s *scene) {
 	inner := func(b outline.Box) float64 {
 		return math.Min(math.Min(b.Min.X, b.Min.Y), math.Min(s.width-b.Max.X, s.height-b.Max.Y))
 	}
-	half := s.stock.Beam() / 2
+	half := s.stock.Taken() / 2
 	for _, c := range s.cuts {
 		l.count(margins, 1)
 		left := inner(c.box) - half
