@@ -86,10 +86,8 @@ func newData(readings []reading.Reading) (*data, error) {
 		if err := sound(r); err != nil {
 			return nil, err
 		}
-		k, seen := by[r.Feature]
-		if !seen {
-			k = len(d.features)
-			by[r.Feature] = k
+		if _, seen := by[r.Feature]; !seen {
+			by[r.Feature] = len(d.features)
 			d.features = append(d.features, feature{name: r.Feature, root: math.Sqrt(float64(r.Count))})
 			if r.Kind == reading.Hole {
 				inverse += 1 / r.Drawn

@@ -1,6 +1,11 @@
 package job
 
-import "fmt"
+import (
+	"fmt"
+	"math"
+
+	"pinwright/parts/hardware"
+)
 
 // Least bores that a pin goes into, against its nominal diameter.
 const (
@@ -10,6 +15,9 @@ const (
 	// forced is how much less than the shaft a bore may be, mm: what a press into sheet takes
 	// (judgement, no source).
 	forced = 0.2
+	// covered is how much wider than a bore its washer must be, mm: half of it bears on either side
+	// (judgement, no source).
+	covered = 1.0
 )
 
 // passing checks that what a joint carries goes through the bores that links have there instead of
@@ -53,5 +61,23 @@ func (r *reader) goesThrough(b Bore, p Pin, v *value) {
 	if wide > 0 && thick > 0 && wide < least {
 		r.fail(v.at, fmt.Sprintf("%s: at least %s mm, or another pin at %s", key, figure(thick), b.Joint),
 			"bore %s: %s does not go through %s mm", b.Joint, what, figure(wide))
+	}
+	r.isCovered(b, p, v)
+}
+
+// isCovered checks that washers and heads do not fall through a round bore for a bolt.
+func (r *reader) isCovered(b Bore, p Pin, v *value) {
+	if b.Kind != RoundBore || p.Kind == ShaftPin {
+		return
+	}
+	wide, what := 0.0, "washer"
+	if w, err := hardware.WasherFor(hardware.WasherKind(p.Washer), p.Bolt); err == nil {
+		wide = w.Outside
+	} else if s, err := hardware.ScrewFor(hardware.Head(p.Head), p.Bolt); err == nil {
+		wide, what = s.HeadDiameter, "head"
+	}
+	if most := math.Round(10*(wide-covered)) / 10; wide > 0 && b.Diameter > most {
+		r.fail(v.at, fmt.Sprintf("round: at most %s mm, or larger washers at %s, or a bearing", figure(most), b.Joint),
+			"bore %s: the %s of %s is %s mm wide and does not cover a bore of %s mm", b.Joint, what, p.Bolt, figure(wide), figure(b.Diameter))
 	}
 }

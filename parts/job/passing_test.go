@@ -37,6 +37,9 @@ func TestBoresAgainstPins(t *testing.T) {
 		{"{hub: {centre: 3, circle: 16, bolts: 4, hole: 3}}", "{round: 4}", "lock", "bore O: the shaft of 6 mm does not go through 3 mm"},
 		{"{round: 6}", "{round: 3.3}", "lock", "bore A: bolt M4 of 4 mm does not go through 3.3 mm"},
 		{"{round: 6}", "{hexagon: 3}", "lock", "bore A: bolt M4 of 4 mm does not go through 3 mm"},
+		// The washer of M4 is 9 mm wide (ISO 7089).
+		{"{round: 6}", "{round: 8}", "lock", ""},
+		{"{round: 6}", "{round: 8.1}", "lock", "bore A: the washer of M4 is 9 mm wide and does not cover a bore of 8.1 mm"},
 		{"{round: 6}", "{round: 2.9}", "none", "bore A: bolt M4 of 4 mm does not go through 2.9 mm"},
 	}
 	for _, c := range cases {

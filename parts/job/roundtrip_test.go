@@ -190,6 +190,14 @@ func drawLinkage(t *rapid.T, j *Job) {
 		}
 		if joint.Ground != nil || len(on) > 1 {
 			j.Pins = append(j.Pins, drawPin(t, joint.Name, on))
+			// A round bore wider than a bolt's washer is refused: let a shaft go through it.
+			for _, l := range j.Links {
+				for _, b := range l.Bores {
+					if p := &j.Pins[len(j.Pins)-1]; b.Joint == p.Joint && b.Kind == RoundBore && p.Kind != ShaftPin {
+						*p = Pin{Joint: p.Joint, Kind: ShaftPin, Shaft: 8, Fit: "running", Washer: "normal"}
+					}
+				}
+			}
 		}
 	}
 }
