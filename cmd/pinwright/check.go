@@ -58,6 +58,9 @@ carries, the smallest gaps between everything that moves, and the parts.`,
 				return refused(err)
 			}
 			if !asJSON {
+				if err := p.printMounts(t.out); err != nil {
+					return refused(err)
+				}
 				fmt.Fprintf(t.out, "%-13s it goes together\n", "verdict")
 			}
 			return nil
@@ -209,4 +212,22 @@ func (p plan) prove() error {
 		return err
 	}
 	return p.crowded()
+}
+
+// printMounts tells where the heads of mounting screws find no room.
+func (p plan) printMounts(w io.Writer) error {
+	notes, err := p.mounts()
+	for _, n := range notes {
+		fmt.Fprintf(w, "%-13s %s\n", "mount", n)
+	}
+	return err
+}
+
+// mounts says where the heads of mounting screws find no room on the side of the links.
+func (p plan) mounts() ([]string, error) {
+	j, list, kits, err := p.single()
+	if err != nil {
+		return nil, err
+	}
+	return assembly.Mounts(j, p.motion.mechanism, list, kits, p.levels)
 }

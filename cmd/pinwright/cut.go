@@ -80,6 +80,9 @@ are not Pinwright's alone.
 				return nil
 			}
 			p.tell(t, dir, len(set))
+			if err := p.printMounts(t.out); err != nil {
+				return refused(err)
+			}
 			return tellProof(t.out, report, false)
 		},
 	}

@@ -96,17 +96,24 @@ func (p plan) summary() string {
 	return strings.Join(lines, "\n")
 }
 
-// holeTable lists every kind of round hole once.
+// holeTable lists every kind of hole once: of round ones the diameter, of others how wide they are where
+// they are narrowest, or their extent.
 func (p plan) holeTable() pdf.Table {
 	t := pdf.Table{Columns: []pdf.Column{{Head: "joint"}, {Head: "part"}, {Head: "for"}, {Head: "finished, mm", Right: true}, {Head: "drawn, mm", Right: true}}}
 	seen := map[string]bool{}
 	for i, part := range p.parts {
 		s, _ := stockNamed(p.job, part.Stock)
 		for k, h := range part.Holes {
+			size, path := fixed(h.Diameter, 3), fixed(drawn(p.cuts[i], k), 3)
 			if h.Diameter == 0 {
-				continue
+				box, cut := p.parts[i].Region.Holes[k].Bounds(), p.cuts[i].Inside[k].Bounds()
+				size = fixed(box.Width(), 2) + " x " + fixed(box.Height(), 2)
+				path = fixed(cut.Width(), 2) + " x " + fixed(cut.Height(), 2)
+				if h.Width > 0 {
+					size = fixed(h.Width, 3) + " wide"
+				}
 			}
-			row := []string{h.Name, part.Link, string(h.Kind), fixed(h.Diameter, 3), fixed(drawn(p.cuts[i], k), 3)}
+			row := []string{h.Name, part.Link, string(h.Kind), size, path}
 			key := strings.Join(append([]string{s.Name}, row...), "|")
 			if !seen[key] {
 				seen[key] = true

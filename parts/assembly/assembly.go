@@ -23,6 +23,9 @@ const (
 	// practice, no source).
 	axial = 0.25
 
+	// contact is how far the heights of two parts that lie face to face may overlap by rounding.
+	contact = 1e-6
+
 	// accuracy is how exactly the smallest gaps are known, and share how much of a gap may be open
 	// on top: only small ones matter to a hundredth.
 	accuracy = 0.01

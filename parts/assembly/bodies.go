@@ -30,6 +30,10 @@ func meet(l linkage.Linkage, a, b thing) bool {
 	}
 	switch {
 	case a.part != "" && b.part != "":
+		// What shares a pin is stacked on it, face to face where there is no washer.
+		if slices.ContainsFunc(a.joints, b.carries) && (a.Low >= b.Up-contact || b.Low >= a.Up-contact) {
+			return false
+		}
 		return a.Carrier != b.Carrier || a.Of != b.Of
 	case a.part == "" && b.part == "":
 		return a.joint != b.joint
