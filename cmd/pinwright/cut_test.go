@@ -152,7 +152,7 @@ func TestCutPartFiles(t *testing.T) {
 	if err != nil || len(parts) != 24 {
 		t.Fatalf("%d drawings of parts, want 24 (%v)", len(parts), err)
 	}
-	if said := fine(t, "proof", dir); !strings.Contains(said, "on 26 drawings") {
+	if said := fine(t, "proof", dir); !strings.Contains(said, "on 2 drawings, and 24 drawings of single parts") {
 		t.Errorf("the proof does not look at the drawings of the parts:\n%s", said)
 	}
 	edit(t, filepath.Join(dir, "parts", "right-2.rocker.dxf"))

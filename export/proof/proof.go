@@ -85,8 +85,12 @@ func Check(fsys fs.FS) (Report, error) {
 			})
 			continue
 		}
-		r.Drawings++
 		parts, holes := l.drawing(s, data)
+		if !s.placed {
+			r.Singles++
+			continue
+		}
+		r.Drawings++
 		r.Parts += parts
 		r.Holes += holes
 	}

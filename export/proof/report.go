@@ -12,9 +12,10 @@ import (
 type Report struct {
 	OK       bool     `json:"ok"`
 	Job      string   `json:"job"`
-	Drawings int      `json:"drawings"`
-	Parts    int      `json:"parts"` // found, cut out whole
-	Holes    int      `json:"holes"` // in these
+	Drawings int      `json:"drawings"` // of sheets
+	Singles  int      `json:"singles"`  // drawings of one part alone; what is on them is not counted again
+	Parts    int      `json:"parts"`    // found, cut out whole
+	Holes    int      `json:"holes"`    // in these
 	Checks   []Result `json:"checks"`
 }
 
@@ -135,8 +136,12 @@ func (r Report) Write(w io.Writer) error {
 		}
 	}
 	if r.OK {
-		fmt.Fprintf(&b, "proof of %s: %s with %s on %s agree with the linkage\n",
-			r.Job, plural(r.Parts, "part"), plural(r.Holes, "hole"), plural(r.Drawings, "drawing"))
+		singles := ""
+		if r.Singles > 0 {
+			singles = ", and " + plural(r.Singles, "drawing") + " of single parts,"
+		}
+		fmt.Fprintf(&b, "proof of %s: %s with %s on %s%s agree with the linkage\n",
+			r.Job, plural(r.Parts, "part"), plural(r.Holes, "hole"), plural(r.Drawings, "drawing"), singles)
 	} else {
 		fmt.Fprintf(&b, "proof of %s FAILS: %s of %d; do not cut these files\n", r.Job, plural(bad, "check"), len(r.Checks))
 	}
