@@ -99,10 +99,7 @@ are not Pinwright's alone.
 
 // readJob reads a job file and takes the hash of its content.
 func readJob(path string) (job.Job, string, error) {
-	data, err := os.ReadFile(path)
-	if err != nil {
-		return job.Job{}, "", system(err)
-	}
+	// The strict reader goes first: it refuses what is no plain file and would keep us waiting.
 	j, err := job.Read(path)
 	var missing *fs.PathError
 	if errors.As(err, &missing) {
@@ -110,6 +107,10 @@ func readJob(path string) (job.Job, string, error) {
 	}
 	if err != nil {
 		return j, "", refused(err)
+	}
+	data, err := os.ReadFile(path)
+	if err != nil {
+		return j, "", system(err)
 	}
 	sum := sha256.Sum256(data)
 	return j, hex.EncodeToString(sum[:]), nil

@@ -292,18 +292,18 @@ func TestUnknown(t *testing.T) {
 		{errOf(ClearanceHole("M4", "normal")), `(there is fine, medium, coarse)`},
 		{errOf(ClearanceHole("1/4", "medium")), `(there is close, normal, loose)`},
 		{errOf(ScrewFor("sockets", "M4")), "did you mean socket?"},
-		{errOf(ScrewFor(Socket, "M7")), `unknown socket head screw "M7"`},
+		{errOf(ScrewFor(Socket, "M7")), "there is no socket head screw for M7"},
 		{errOf(ScrewFor(Socket, "#8")), "clearance holes of inch bolts and nothing else"},
 		{errOf(NutFor("locknut", "M4")), "(there is lock, plain, thin)"},
 		{errOf(NutFor("", "M4")), "unknown nut"},
-		{errOf(NutFor(LockNut, "M12")), `unknown lock nut "M12"`},
+		{errOf(NutFor(LockNut, "M12")), "there is no lock nut for M12"},
 		{errOf(WasherFor("big", "M4")), "(there is normal, small, large)"},
-		{errOf(WasherFor(LargeWasher, "M2")), `unknown large washer "M2"`},
+		{errOf(WasherFor(LargeWasher, "M2")), "there is no large washer for M2"},
 		{errOf(BearingFor("6244")), "did you mean 624?"},
 		{errOf(BearingFor("MF83ZZ")), "the open form MF83 alone"},
 		{errOf(BearingFor("")), `unknown bearing ""`},
 		{errOf(CollarFor(7)), "unknown collar for a shaft of"},
-		{errOf(ShaftWasher(NormalWasher, 7)), "washer for a shaft of 7 mm"},
+		{errOf(ShaftWasher(NormalWasher, 12)), "no normal washer goes on a shaft of 12 mm: the widest bore in the catalogue is 10.5 mm"},
 		{errOf(ShaftHole(6, "presss")), "did you mean press?"},
 		{errOf(ShaftHole(6, "h6")), `unknown fit "h6"`},
 		{errOf(ShaftHole(60, "press")), "P7 at 60 mm: the table runs from 1 to 50 mm"},
@@ -374,4 +374,14 @@ func TestAnything(t *testing.T) {
 			}
 		}
 	})
+}
+
+// A shaft that no bolt has the size of gets the smallest washer that goes on it: 1/4 inch is 6.35 mm, and
+// the washer of M6 has a bore of 6.4 mm at least (ISO 7089).
+func TestShaftWasherNext(t *testing.T) {
+	for shaft, want := range map[float64]string{6: "M6", 6.35: "M6", 7: "M8"} {
+		if w, err := ShaftWasher(NormalWasher, shaft); err != nil || w.Size != want {
+			t.Errorf("%g mm: %s, %v; want %s", shaft, w.Size, err, want)
+		}
+	}
 }

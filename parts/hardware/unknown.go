@@ -3,6 +3,7 @@ package hardware
 import (
 	"errors"
 	"fmt"
+	"strconv"
 	"strings"
 	"unicode"
 )
@@ -31,6 +32,10 @@ func unknown(noun, word string, among []string) error {
 func missing(noun, size string, among []string) error {
 	if IsInch(size) {
 		return fmt.Errorf("%s %s: %w", noun, size, ErrInch)
+	}
+	if _, err := strconv.ParseFloat(strings.TrimPrefix(size, "M"), 64); err == nil {
+		// A size that is written right and is not there: no other spelling is meant.
+		return fmt.Errorf("there is no %s for %s in the catalogue: it has %s", noun, size, strings.Join(among, ", "))
 	}
 	return unknown(noun, size, among)
 }

@@ -2,6 +2,7 @@ package hardware
 
 import (
 	"fmt"
+	"math"
 	"strings"
 )
 
@@ -64,13 +65,35 @@ func WasherFor(kind WasherKind, size string) (Washer, error) {
 }
 
 // ShaftWasher gives the washer of a series that goes on a plain shaft: that of the bolt of the same
-// diameter.
+// diameter, or the smallest whose bore the shaft goes through, so that a shaft of 1/4 inch gets the one of
+// M6 (6.4 mm). Unknown series and shafts thicker than every bore are errors.
 func ShaftWasher(kind WasherKind, diameter float64) (Washer, error) {
-	w, err := WasherFor(kind, fmt.Sprintf("M%g", diameter))
+	c, err := read()
 	if err != nil {
-		return Washer{}, fmt.Errorf("washer for a shaft of %g mm: %w", diameter, err)
+		return Washer{}, err
 	}
-	return w, nil
+	var best Washer
+	most := 0.0
+	for _, w := range c.washers {
+		if w.Kind != kind {
+			continue
+		}
+		if w.Size == fmt.Sprintf("M%g", diameter) {
+			return w, nil
+		}
+		most = math.Max(most, w.Bore)
+		if w.Bore >= diameter && (best.Bore == 0 || w.Bore < best.Bore) {
+			best = w
+		}
+	}
+	switch {
+	case most == 0:
+		_, err = WasherFor(kind, "")
+		return Washer{}, err
+	case best.Bore == 0:
+		return Washer{}, fmt.Errorf("no %s washer goes on a shaft of %g mm: the widest bore in the catalogue is %g mm", kind, diameter, most)
+	}
+	return best, nil
 }
 
 // Designation writes the washer as it is ordered: "ISO 7089 4".

@@ -319,7 +319,7 @@ func TestBadInput(t *testing.T) {
 		{jobOf(two, []job.Pin{bolt("A", "M4")}, nil, sheet("s", -3, -3)), "crank is -3 mm thick"},
 		{jobOf(two, []job.Pin{bolt("A", "M4")}, nil, sheet("s", 3, math.NaN())), "crank is NaN mm thick"},
 		{jobOf(two, []job.Pin{bolt("Z", "M4")}, nil, s), "joint Z: it has a pin, and no link or plate is on it"},
-		{change(func(p *job.Pin) { p.Bolt = "M7" }), `joint A: unknown socket head screw "M7"`},
+		{change(func(p *job.Pin) { p.Bolt = "M7" }), "joint A: there is no socket head screw for M7"},
 		{change(func(p *job.Pin) { p.Bolt = "#99" }), `joint A: unknown bolt "#99"`},
 		{change(func(p *job.Pin) { p.Head = "cheese" }), `joint A: unknown head "cheese"`},
 		{change(func(p *job.Pin) { p.Nut = "wing" }), `joint A: unknown nut "wing"`},
@@ -329,7 +329,7 @@ func TestBadInput(t *testing.T) {
 		{change(func(p *job.Pin) { p.Kind, p.Bearing, p.Seats = job.BearingPin, "624", []string{"leg"} }), "sit in leg, which is not on this joint"},
 		{change(func(p *job.Pin) { p.Kind, p.Bearing, p.Seats = job.BearingPin, "623", []string{"crank"} }), "bolt M4 of 4 mm does not go through the bore of bearing 623, 3 mm"},
 		{change(func(p *job.Pin) { p.Kind, p.Shaft = job.ShaftPin, 0 }), "a shaft of 0 mm"},
-		{change(func(p *job.Pin) { p.Kind, p.Shaft = job.ShaftPin, 7 }), "washer for a shaft of 7 mm"},
+		{change(func(p *job.Pin) { p.Kind, p.Shaft = job.ShaftPin, 12 }), "no normal washer goes on a shaft of 12 mm"},
 		{change(func(p *job.Pin) { p.Kind, p.Shaft, p.Washer, p.Fit = job.ShaftPin, 7, "none", "running" }), "unknown collar for a shaft of"},
 	} {
 		kits, err := Build(c.job)
