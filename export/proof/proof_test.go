@@ -207,7 +207,7 @@ func TestPartDrawnAlone(t *testing.T) {
 		folder[manifest.Name].Data = text.Bytes()
 		return folder
 	}
-	if r := check(t, alone(80)); !r.OK || r.Drawings != 2 || r.Parts != 8 {
+	if r := check(t, alone(80)); !r.OK || r.Drawings != 1 || r.Singles != 1 || r.Parts != 7 {
 		t.Error(printed(t, r))
 	}
 	if text := printed(t, check(t, alone(80.01))); !strings.Contains(text, "parts/rocker.dxf:") || !strings.Contains(text, "rocker: A-B differs from the linkage by 0.0100 mm") {
