@@ -28,23 +28,22 @@ func Holes(j job.Job) ([]Hole, error) {
 	for _, p := range j.Pins {
 		var specs []hardware.Spec
 		switch p.Kind {
-		case job.BearingPin:
-			fine := "fine"
-			if hardware.IsInch(p.Bolt) {
-				fine = "close"
+		case job.BearingPin, job.SleevePin:
+			if len(p.Seats) > 0 {
+				specs = append(specs, p.HoleIn(p.Seats[0], false))
 			}
-			specs = append(specs, hardware.Spec{Kind: hardware.BearingSeat, Size: p.Bearing, Fit: p.Fit, Clearance: p.Clearance})
 			if p.Bolt != "" {
-				specs = append(specs, hardware.Spec{Kind: hardware.Bolt, Size: p.Bolt, Fit: fine})
+				specs = append(specs, p.HoleIn("", false))
 			}
+		case job.ClampPin:
+			specs = append(specs, p.HoleIn("", false), p.HoleIn(p.Clamped, false))
 		case job.ShaftPin:
-			specs = append(specs, hardware.Spec{Kind: hardware.Shaft, Diameter: p.Shaft, Fit: p.Fit, Clearance: p.Clearance})
+			specs = append(specs, p.HoleIn("", false))
 			if hardware.Tight(p.Fit, p.Clearance) && inPlate(j, p.Joint) {
-				loose, clearance := hardware.PlateFit(p.Fit, p.Clearance)
-				specs = append(specs, hardware.Spec{Kind: hardware.Shaft, Diameter: p.Shaft, Fit: loose, Clearance: clearance})
+				specs = append(specs, p.HoleIn("", true))
 			}
 		default:
-			specs = append(specs, hardware.Spec{Kind: hardware.Bolt, Size: p.Bolt, Fit: p.Fit, Clearance: p.Clearance})
+			specs = append(specs, p.HoleIn("", false))
 		}
 		for _, s := range specs {
 			h, err := HoleFor(s)

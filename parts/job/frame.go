@@ -78,6 +78,7 @@ func (r *reader) frame(v *value, d defaults, j *Job) *Frame {
 	if len(f.Cross) > 0 && len(f.Plates) == 1 {
 		r.fail(v.get("cross").at, "add a plate, or take the cross members out", "cross members stand between two frame plates, and there is one")
 	}
+	f.Standoffs = r.standoffs(v.get("standoffs"), f)
 	return f
 }
 

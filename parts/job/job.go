@@ -20,6 +20,7 @@ type Job struct {
 	Copies  []Copy // at least one; expanded: count 2 gives two entries
 	Body    *Body  // nil: the copies stand apart, nothing is said about how
 	Pins    []Pin  // one for every joint that carries one, in the order of Linkage.Joints
+	Spacers Spacers
 	Stock   []Stock
 	Spare   Spare
 
@@ -99,6 +100,8 @@ type Frame struct {
 	Plates []FramePlate
 	Mount  *Mount
 	Cross  []CrossMember
+
+	Standoffs *Standoffs // nil: none
 }
 
 // FramePlate is one plate of the frame.
@@ -116,6 +119,15 @@ type Mount struct {
 	Diameter float64         // finished, mm; 0: by Bolt and Fit
 	Bolt     string          // designation when given, for the list
 	Fit      string          // of the bolt, when there is one and Diameter is 0
+}
+
+// Standoffs keep the lowest and the highest frame plate apart, with a screw from either side.
+type Standoffs struct {
+	At    []outline.Point // in the linkage's coordinates
+	Bolt  string          // size of their thread, metric
+	Fit   string          // of the screws in the plates
+	Head  string          // of the screws: socket, button, hexagon
+	Round bool            // round instead of hexagon
 }
 
 // CrossMember is a plate that stands between two frame plates, with tabs in their slots.
@@ -143,6 +155,9 @@ const (
 	BoltPin    PinKind = "bolt"    // bolt as axle, with a locknut
 	BearingPin PinKind = "bearing" // ball bearing pressed into one link, bolt through its bore
 	ShaftPin   PinKind = "shaft"   // plain round shaft
+	SleevePin  PinKind = "sleeve"  // bolt that clamps a sleeve, on which links turn
+	ClampPin   PinKind = "clamp"   // bolt clamped to one link, as a crank's pin; the others turn on it
+	RodEndPin  PinKind = "rod-end" // bolt that clamps the ball of a rod end to a link
 )
 
 // Pin is what one joint carries.
@@ -151,13 +166,49 @@ type Pin struct {
 	Kind      PinKind
 	Bolt      string   // "M4", "#8", "1/4"; for a bearing the bolt through its bore
 	Bearing   string   // designation, "624"
-	Seats     []string // links that carry the bearing
+	Seats     []string // links and frame plates that carry the bearing or turn on the sleeve
+	Sleeve    float64  // outside diameter of the sleeve, mm
+	Clamped   string   // link or frame plate that the bolt is clamped to
+	RodEnd    Side     // where the rod end is
 	Shaft     float64  // shaft diameter, mm
+	Retain    Retainer // what keeps a shaft where it is
 	Fit       string   // fine medium coarse (ISO 273), close normal loose (ASME B18.2.8), running sliding push press or an ISO 286 hole class ("H7")
 	Clearance *float64 // explicit diametral clearance, mm; overrides Fit
 	Head      string   // socket, button, hexagon
 	Nut       string   // lock, plain, thin, none
 	Washer    string   // normal, small, large, none
+
+	// Play is the least and the greatest axial play wanted, mm; both 0: what is usual for the kind.
+	Play [2]float64
+	// Excess is how much longer than it must be the bolt may be, mm; 0: what is usual.
+	Excess float64
+}
+
+// Side is an end of a bolt.
+type Side string
+
+// The sides; "" is none.
+const (
+	HeadSide Side = "head"
+	NutSide  Side = "nut"
+)
+
+// Retainer keeps a shaft from wandering.
+type Retainer string
+
+// The retainers; "" is taken as collars.
+const (
+	CollarRetainer Retainer = "collar" // set collar with a screw
+	RingRetainer   Retainer = "ring"   // push-on ring with teeth, for shafts without a groove
+)
+
+// Spacers says where spacers and sleeves come from. The zero value: cut from tube, and nothing is known
+// of the tube.
+type Spacers struct {
+	Stock   bool      // of stock lengths only
+	Lengths []float64 // the stock lengths, ascending, mm; empty: the usual ones
+	Tube    float64   // length of a tube from which they are cut, mm; 0: not known, no cutting plan
+	Saw     float64   // what a cut takes away, mm
 }
 
 // Grain says how parts may be turned on a stock.

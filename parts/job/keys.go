@@ -15,6 +15,7 @@ const (
 	kerfAdvice  = "kerf is the FULL width that the beam takes away (not the loss on one side): cut a square in this sheet, measure it, and write what is missing; most lasers take 0.1 to 0.3 mm"
 	planeAdvice = "state plane: 1 or another whole number, the level in the side view, or leave it out: it is found; links that share a joint lie on different planes"
 	pinAdvice   = "say bolt: M4, or bearing: 624, or shaft: 6mm"
+	playAdvice  = "say the least and the greatest, play: [0.1mm, 0.3mm]"
 )
 
 var jobForm = table("the job file",
@@ -27,6 +28,7 @@ var jobForm = table("the job file",
 	key{name: "copies", form: listOf(copyForm), about: "How often the linkage is built, at which phase, which of them mirrored. Without it: once."},
 	key{name: "body", form: bodyForm, about: "The machine that the copies stand on, one above the other along their shafts, which turn together. Without it: nothing is said about how they stand."},
 	key{name: "pins", form: pinsForm, about: "What goes through each joint; default is for all joints that are not named.", advice: "write pins: {default: {bolt: M4, fit: medium}}", slips: []string{"bolts", "hardware"}},
+	key{name: "spacers", form: spacersForm, about: "Where spacers and sleeves come from. Left out: cut from tube, without a plan of the cuts.", slips: []string{"spacer", "tube"}},
 	key{name: "spare", form: spareForm, about: "Hardware bought on top."},
 	key{name: "stock", need: true, form: stocksForm, about: "The sheets on the shelf, each kind by a name of your choice.", advice: "write stock: {clear3: {material: cast acrylic, thickness: 3mm, sheet: [600mm, 400mm], margin: 5mm, kerf: ...}}", slips: []string{"sheets", "materials"}},
 )
@@ -151,6 +153,7 @@ var frameForm = table("frame",
 	key{name: "plates", need: true, form: named(fileName, plateForm), about: "The plates, by name.", advice: "write plates: {front: {plane: 0}}"},
 	key{name: "mount", form: mountForm, about: "Holes by which the frame is screwed to something."},
 	key{name: "cross", form: listOf(crossForm), about: "Plates that stand between the frame plates, with tabs in slots."},
+	key{name: "standoffs", form: standoffsForm, about: "Bolts with thread in both ends that keep the lowest and the highest plate apart.", slips: []string{"spacers", "pillars"}},
 )
 
 var plateForm = table("plate",
@@ -193,13 +196,36 @@ var pinsForm = form{kind: aNamed, rule: jointName, item: &pinForm, least: 1}
 var pinForm = table("pin",
 	key{name: "bolt", form: text, about: "Bolt as axle: M4, \"#8\", 1/4. With bearing: the bolt through its bore.", advice: pinAdvice},
 	key{name: "bearing", form: text, about: "Ball bearing pressed into a part: 624, MR105.", advice: pinAdvice},
-	key{name: "in", form: listOf(name(fileName)), about: "Links (or frame plates) that the bearing sits in."},
+	key{name: "in", form: listOf(name(fileName)), about: "Links (or frame plates) that the bearing or the sleeve sits in."},
+	key{name: "sleeve", form: positive(100), about: "Outside diameter of a sleeve that the bolt clamps; the links of in turn on it.", slips: []string{"bush", "bushing", "tube"}},
+	key{name: "clamp", form: name(fileName), about: "Link that the bolt is clamped to, between its head and a nut or between two nuts; the others turn on the bolt. It is the first or the last of the stack.", slips: []string{"clamped"}},
+	key{name: "rod-end", form: choice(string(HeadSide), string(NutSide)), about: "The bolt clamps the ball of a rod end to the link, on the side of the head or of the nut: for arms that leave the plane.", slips: []string{"ball", "ball-joint", "rod end"}},
 	key{name: "shaft", form: positive(100), about: "Diameter of a plain round shaft.", advice: pinAdvice},
+	key{name: "retain", form: choice(string(CollarRetainer), string(RingRetainer)), about: "What keeps a shaft where it is: set collars or push-on rings. Left out: collar.", slips: []string{"retainer", "retained"}},
 	key{name: "fit", form: text, about: "Bolts: fine, medium, coarse (ISO 273), close, normal, loose (ASME B18.2.8). Shafts and bearings: running, sliding, push, press, or a hole class such as H7 (ISO 286)."},
 	key{name: "clearance", form: between(length, -1, 5), about: "Diametral clearance, instead of a fit; negative presses."},
 	key{name: "head", form: choice("socket", "button", "hexagon"), about: "Head of the bolt. Left out: socket."},
 	key{name: "nut", form: choice("lock", "plain", "thin", "none"), about: "Nut of the bolt. Left out: lock."},
 	key{name: "washer", form: choice("normal", "small", "large", "none"), about: "Washers between the parts. Left out: normal.", slips: []string{"washers"}},
+	key{name: "play", form: form{kind: aList, item: &playForm, least: 2, most: 2}, about: "Least and greatest axial play wanted. Left out: [0.1mm, 0.2mm], of a sleeve [0.1mm, 0.4mm]; nothing has play where a bearing's bolt is tightened.", advice: playAdvice, slips: []string{"end-play"}},
+	key{name: "excess", form: positive(200), about: "How much longer than it must be the bolt may be; beyond, washers are put under its nut. Left out: 10 mm."},
+)
+
+var playForm = between(length, 0, 5)
+
+var spacersForm = table("spacers",
+	key{name: "from", form: choice("tube", "stock"), about: "tube: cut to length; stock: bought in the lengths of the shop alone. Left out: tube."},
+	key{name: "lengths", form: listOf(positive(1000)), about: "The stock lengths that you can get. Left out: the usual ones."},
+	key{name: "tube", form: positive(6500), about: "Length of a tube. Left out: 1000 mm.", slips: []string{"length"}},
+	key{name: "saw", form: between(length, 0, 10), about: "Width that a cut of the saw takes away. Left out: 1.5 mm.", slips: []string{"kerf", "cut"}},
+)
+
+var standoffsForm = table("standoffs",
+	key{name: "at", need: true, form: listOf(place), about: "Places, in the linkage's coordinates.", slips: []string{"holes"}},
+	key{name: "bolt", need: true, form: text, about: "Size of their thread: M3, M4.", advice: "say bolt: M3"},
+	key{name: "fit", form: text, about: "Fit of the screws in the plates: fine, medium, coarse (ISO 273). Left out: medium."},
+	key{name: "head", form: choice("socket", "button", "hexagon"), about: "Head of the screws. Left out: socket."},
+	key{name: "form", form: choice("hexagon", "round"), about: "Form of the standoffs. Left out: hexagon."},
 )
 
 var spareForm = table("spare",

@@ -118,6 +118,7 @@ func (r *reader) build(v *value) Job {
 	j.Copies = r.copies(v.get("copies"))
 	j.Body = r.body(v.get("body"), &j)
 	j.Pins = r.pins(v.get("pins"), v.at, &j)
+	j.Spacers = r.spacers(v.get("spacers"))
 	r.passing(v.get("linkage").get("links"), &j)
 	j.Spare = Spare{Percent: v.get("spare").get("percent").numberOr(0), Least: int(v.get("spare").get("least").numberOr(0))}
 	return j

@@ -21,6 +21,9 @@ func (r *reader) pins(v *value, top spot, j *Job) []Pin {
 	if standard != nil && standard.has("in") {
 		r.fail(standard.get("in").at, "name the joint: B: {bearing: 624, in: [rocker]}", "pins default: one list of links can't be right for all joints")
 	}
+	if standard != nil && standard.has("clamp") {
+		r.fail(standard.get("clamp").at, "name the joint: A: {bolt: M4, clamp: crank}", "pins default: one link can't be clamped at all joints")
+	}
 	own := map[string]*value{}
 	for _, e := range v.all() {
 		if e.name == "default" {
@@ -30,7 +33,7 @@ func (r *reader) pins(v *value, top spot, j *Job) []Pin {
 		if name == "" {
 			continue
 		}
-		if links := carried[name]; len(links) == 1 && !r.isGround(name, j) {
+		if links := carried[name]; len(links) == 1 && !r.isGround(name, j) && !e.value.has("rod-end") {
 			r.fail(e.at, "take it out; a pen hole is foot: {at: "+name+", radius: 9mm, pen: 5mm} on the link", "pins: joint %s is on link %s alone: it carries no pin", name, links[0])
 			continue
 		}
@@ -40,7 +43,7 @@ func (r *reader) pins(v *value, top spot, j *Job) []Pin {
 	var without []string
 	for _, joint := range j.Linkage.Joints {
 		links := carried[joint.Name]
-		if len(links) == 0 || len(links) == 1 && joint.Ground == nil {
+		if len(links) == 0 || len(links) == 1 && joint.Ground == nil && !own[joint.Name].has("rod-end") {
 			continue
 		}
 		if own[joint.Name] == nil && standard == nil {
@@ -83,6 +86,12 @@ func pinKind(v *value) PinKind {
 		return BearingPin
 	case v.has("shaft"):
 		return ShaftPin
+	case v.has("sleeve"):
+		return SleevePin
+	case v.has("clamp"):
+		return ClampPin
+	case v.has("rod-end"):
+		return RodEndPin
 	case v.has("bolt"):
 		return BoltPin
 	}
@@ -106,6 +115,9 @@ func (r *reader) pin(joint string, own, standard *value, links []string, at spot
 	for _, v := range []*value{own, standard} {
 		if v != nil && v.has("shaft") && (v.has("bolt") || v.has("bearing")) {
 			r.fail(v.at, "keep one of them", "%s: shaft excludes bolt and bearing", whose(v))
+			return p
+		}
+		if !r.oneKind(v, whose) {
 			return p
 		}
 		if v != nil && v.has("fit") && v.has("clearance") {
@@ -136,18 +148,41 @@ func (r *reader) pin(joint string, own, standard *value, links []string, at spot
 		p.Clearance = &c
 	}
 	if p.Kind == ShaftPin {
-		for _, key := range []string{"head", "nut"} {
+		for _, key := range []string{"head", "nut", "excess"} {
 			if own.has(key) && own.has("shaft") {
 				r.fail(own.get(key).at, "take it out", "%s: a plain shaft has no %s", where, key)
 			}
 		}
 	} else {
 		p.Head, p.Nut = pick("head").textOr("socket"), pick("nut").textOr("lock")
+		p.Excess = pick("excess").numberOr(0)
+		if own.has("retain") {
+			r.fail(own.get("retain").at, "take it out", "%s: only a plain shaft is kept by collars or rings", where)
+		}
 	}
 	p.Washer = pick("washer").textOr("normal")
+	p.Play = r.play(own, pick("play"), p.Kind, whose(pick("play")))
+	if b := pick("bolt"); b == nil && (p.Kind == SleevePin || p.Kind == ClampPin || p.Kind == RodEndPin) {
+		r.fail(at, "say bolt: M4 too", "%s: %s is said, and not the bolt", where, p.Kind)
+		return p
+	}
 	switch p.Kind {
+	case SleevePin:
+		p.Bolt = r.bolt(pick("bolt"))
+		p.Sleeve = pick("sleeve").numberOr(0)
+		p.Fit = r.shaftFit(fit, whose(fit), "running")
+		p.Seats = r.seats(own, links, joint, where, at, j)
+	case ClampPin:
+		p.Bolt = r.bolt(pick("bolt"))
+		p.Fit = r.boltFit(fit, p.Bolt, whose(fit))
+		p.Clamped = r.known(own.get("clamp"), r.onJoint(links, joint, j), "link", where)
+	case RodEndPin:
+		p.Bolt = r.bolt(pick("bolt"))
+		p.Fit = r.boltFit(fit, p.Bolt, whose(fit))
+		p.RodEnd = Side(pick("rod-end").textOr(""))
 	case ShaftPin:
 		p.Shaft = pick("shaft").numberOr(0)
+		p.Retain = Retainer(pick("retain").textOr(""))
 		p.Fit = r.shaftFit(fit, whose(fit), "running")
 	case BearingPin:
 		p.Bearing = r.bearing(pick("bearing"))
@@ -162,22 +197,59 @@ func (r *reader) pin(joint string, own, standard *value, links []string, at spot
 	if p.Clearance != nil {
 		p.Fit = ""
 	}
-	if p.Kind != BearingPin && own.has("in") {
-		r.fail(own.get("in").at, "take it out", "%s: only a bearing sits in a link", where)
+	if p.Kind != BearingPin && p.Kind != SleevePin && own.has("in") {
+		r.fail(own.get("in").at, "take it out", "%s: only a bearing or a sleeve sits in a link", where)
+	}
+	if own.has("nut") && p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin) {
+		r.fail(own.get("nut").at, "take it out", "%s: without a nut nothing is clamped", where)
 	}
 	return p
 }
 
-// seats are the parts that the bearing is pressed into.
-func (r *reader) seats(own *value, links []string, joint, where string, at spot, j *Job) []string {
-	in := own.get("in")
-	if in == nil {
-		if own != nil && len(links) > 0 {
-			r.fail(at, "write in: ["+links[len(links)-1]+"]", "%s: which link the bearing sits in is not said", where)
-		}
-		return nil
+// oneKind checks that what makes a kind of pin is said of one kind alone.
+func (r *reader) oneKind(v *value, whose func(*value) string) bool {
+	if v == nil {
+		return true
 	}
-	possible := append([]string{}, links...)
+	var said []string
+	for _, key := range []string{"shaft", "bearing", "sleeve", "clamp", "rod-end"} {
+		if v.has(key) {
+			said = append(said, key)
+		}
+	}
+	if len(said) > 1 {
+		r.fail(v.get(said[1]).at, "keep one of them", "%s: %s and %s exclude each other", whose(v), said[0], said[1])
+		return false
+	}
+	return true
+}
+
+// play reads the least and the greatest play wanted; both 0 when nothing is said.
+func (r *reader) play(own, v *value, kind PinKind, where string) [2]float64 {
+	if !v.ok() {
+		return [2]float64{}
+	}
+	if kind == BearingPin || kind == RodEndPin {
+		if own.has("play") {
+			r.fail(v.at, "take it out", "%s: the bolt of a %s is tightened and has no play", where, kind)
+		}
+		return [2]float64{}
+	}
+	items := v.each()
+	if len(items) != 2 || !items[0].ok() || !items[1].ok() {
+		return [2]float64{}
+	}
+	least, most := items[0].number, items[1].number
+	if least >= most {
+		r.fail(v.at, playAdvice, "%s: play from %s to %s mm: the least must be under the greatest", where, figure(least), figure(most))
+		return [2]float64{}
+	}
+	return [2]float64{least, most}
+}
+
+// onJoint are the links and the frame plates at a joint.
+func (r *reader) onJoint(links []string, joint string, j *Job) []string {
+	possible := slices.Clone(links)
 	if j.Frame != nil && r.isGround(joint, j) {
 		for _, plate := range j.Frame.Plates {
 			if slices.Contains(plate.Pivots, joint) {
@@ -185,6 +257,19 @@ func (r *reader) seats(own *value, links []string, joint, where string, at spot,
 			}
 		}
 	}
+	return possible
+}
+
+// seats are the parts that the bearing is pressed into, or that turn on the sleeve.
+func (r *reader) seats(own *value, links []string, joint, where string, at spot, j *Job) []string {
+	in := own.get("in")
+	if in == nil {
+		if own != nil && len(links) > 0 {
+			r.fail(at, "write in: ["+links[len(links)-1]+"]", "%s: which link the %s sits in is not said", where, pinWhat(own))
+		}
+		return nil
+	}
+	possible := r.onJoint(links, joint, j)
 	var out []string
 	for _, v := range in.each() {
 		name := r.known(v, possible, "link", where)
@@ -198,6 +283,14 @@ func (r *reader) seats(own *value, links []string, joint, where string, at spot,
 		out = append(out, name)
 	}
 	return out
+}
+
+// pinWhat names what sits in a link.
+func pinWhat(own *value) string {
+	if pinKind(own) == SleevePin {
+		return "sleeve"
+	}
+	return "bearing"
 }
 
 // bearingBolt is the bolt through a bearing's bore: the pin's own, else the default's when it goes

@@ -62,6 +62,12 @@ func drawJob(t *rapid.T) Job {
 	for i := range j.Links {
 		j.Links[i].Stock = stock()
 	}
+	switch rapid.IntRange(0, 2).Draw(t, "spacers") {
+	case 1:
+		j.Spacers = Spacers{Stock: true, Lengths: []float64{5, 10, mm(t, 11, 90, "stock length")}}
+	case 2:
+		j.Spacers = Spacers{Tube: mm(t, 100, 6000, "tube"), Saw: mm(t, 0, 3, "saw")}
+	}
 	j.Spare = Spare{Percent: mm(t, 0, 100, "percent"), Least: rapid.IntRange(0, 9).Draw(t, "least")}
 	for i := range rapid.IntRange(1, 4).Draw(t, "copies") {
 		j.Copies = append(j.Copies, Copy{fmt.Sprintf("c%d", i), mm(t, -7, 7, "phase"), rapid.Bool().Draw(t, "mirror")})
@@ -86,6 +92,9 @@ func drawJob(t *rapid.T) Job {
 		}
 		for range rapid.IntRange(0, 2).Draw(t, "cross") {
 			f.Cross = append(f.Cross, CrossMember{outline.Point{X: mm(t, -99, 99, "x"), Y: 4}, mm(t, -3, 3, "angle"), mm(t, 10, 90, "width"), rapid.IntRange(1, 5).Draw(t, "tabs"), stock(), mm(t, -0.5, 0.5, "clearance")})
+		}
+		if rapid.Bool().Draw(t, "standoffs") {
+			f.Standoffs = &Standoffs{At: []outline.Point{{X: mm(t, -99, 99, "x"), Y: 7}}, Bolt: "M3", Fit: "fine", Head: "button", Round: rapid.Bool().Draw(t, "round")}
 		}
 		j.Frame = f
 	}
@@ -204,12 +213,27 @@ func drawLinkage(t *rapid.T, j *Job) {
 
 func drawPin(t *rapid.T, joint string, on []string) Pin {
 	p := Pin{Joint: joint, Washer: rapid.SampledFrom([]string{"normal", "small", "large", "none"}).Draw(t, "washer")}
-	p.Kind = rapid.SampledFrom([]PinKind{BoltPin, BearingPin, ShaftPin}).Draw(t, "kind")
+	p.Kind = rapid.SampledFrom([]PinKind{BoltPin, BearingPin, ShaftPin, SleevePin, ClampPin, RodEndPin}).Draw(t, "kind")
 	if p.Kind != ShaftPin {
 		p.Head = rapid.SampledFrom([]string{"socket", "button", "hexagon"}).Draw(t, "head")
 		p.Nut = rapid.SampledFrom([]string{"lock", "plain", "thin", "none"}).Draw(t, "nut")
+		p.Excess = rapid.SampledFrom([]float64{0, 4.5, 20}).Draw(t, "excess")
+	}
+	if p.Kind != BearingPin && p.Kind != RodEndPin && rapid.Bool().Draw(t, "play") {
+		p.Play = [2]float64{mm(t, 0, 0.3, "least play"), mm(t, 0.4, 2, "most play")}
+	}
+	if p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin) {
+		p.Nut = "lock"
 	}
 	switch p.Kind {
+	case SleevePin:
+		p.Bolt, p.Sleeve, p.Seats = "M4", mm(t, 5, 8, "sleeve"), on[:1]
+		p.Fit = rapid.SampledFrom(plainFits).Draw(t, "fit")
+	case ClampPin:
+		p.Bolt, p.Clamped, p.Fit = "M5", on[0], rapid.SampledFrom(metricFits).Draw(t, "fit")
+	case RodEndPin:
+		p.Bolt, p.Fit = "M5", rapid.SampledFrom(metricFits).Draw(t, "fit")
+		p.RodEnd = rapid.SampledFrom([]Side{HeadSide, NutSide}).Draw(t, "side")
 	case BoltPin:
 		p.Bolt, p.Fit = "M4", rapid.SampledFrom(metricFits).Draw(t, "fit")
 		if rapid.Bool().Draw(t, "inch") {
@@ -220,6 +244,7 @@ func drawPin(t *rapid.T, joint string, on []string) Pin {
 		p.Fit = rapid.SampledFrom(append([]string{"H7", "N7"}, plainFits...)).Draw(t, "fit")
 	default:
 		p.Shaft, p.Fit = mm(t, 1, 10, "shaft"), rapid.SampledFrom(plainFits).Draw(t, "fit")
+		p.Retain = rapid.SampledFrom([]Retainer{"", CollarRetainer, RingRetainer}).Draw(t, "retain")
 	}
 	if rapid.Bool().Draw(t, "explicit") {
 		c := mm(t, -0.5, 0.5, "clearance")
@@ -325,6 +350,13 @@ func writeJob(j Job) string {
 		} else {
 			line("  mount: {holes: [%s, %s], diameter: %s}", at(f.Mount.At[0]), at(f.Mount.At[1]), mm(f.Mount.Diameter))
 		}
+		if s := f.Standoffs; s != nil {
+			kind := "hexagon"
+			if s.Round {
+				kind = "round"
+			}
+			line("  standoffs: {at: [%s], bolt: %s, fit: %s, head: %s, form: %s}", at(s.At[0]), s.Bolt, s.Fit, s.Head, kind)
+		}
 		if len(f.Cross) > 0 {
 			line("  cross:")
 		}
@@ -358,6 +390,24 @@ func writeJob(j Job) string {
 		if p.Bearing != "" {
 			line("    bearing: %s\n    in: [%s]", p.Bearing, strings.Join(p.Seats, ", "))
 		}
+		if p.Sleeve > 0 {
+			line("    sleeve: %s\n    in: [%s]", mm(p.Sleeve), strings.Join(p.Seats, ", "))
+		}
+		if p.Clamped != "" {
+			line("    clamp: %s", p.Clamped)
+		}
+		if p.RodEnd != "" {
+			line("    rod-end: %s", p.RodEnd)
+		}
+		if p.Retain != "" {
+			line("    retain: %s", p.Retain)
+		}
+		if p.Play[1] > 0 {
+			line("    play: [%s, %s]", mm(p.Play[0]), mm(p.Play[1]))
+		}
+		if p.Excess > 0 {
+			line("    excess: %s", mm(p.Excess))
+		}
 		if p.Shaft > 0 {
 			line("    shaft: %s", mm(p.Shaft))
 		}
@@ -370,6 +420,15 @@ func writeJob(j Job) string {
 		if p.Head != "" {
 			line("    head: %s\n    nut: %s", p.Head, p.Nut)
 		}
+	}
+	if s := j.Spacers; s.Stock {
+		var all []string
+		for _, l := range s.Lengths {
+			all = append(all, mm(l))
+		}
+		line("spacers: {from: stock, lengths: [%s]}", strings.Join(all, ", "))
+	} else if s.Tube > 0 {
+		line("spacers: {from: tube, tube: %s, saw: %s}", mm(s.Tube), mm(s.Saw))
 	}
 	line("spare: {percent: %s, least: %d}", strings.TrimSuffix(mm(j.Spare.Percent), "mm"), j.Spare.Least)
 	line("stock:")
