@@ -26,6 +26,9 @@ type catalogue struct {
 	rings      []ring
 	threads    []Thread
 	collars    []Collar
+	pushRings  []PushRing
+	rodEnds    []RodEnd
+	standoffs  []Standoff
 	zones      []zone
 }
 
@@ -46,6 +49,9 @@ var read = sync.OnceValues(func() (*catalogue, error) {
 		rows("bearing_tolerance", &c.rings, ringOf),
 		rows("threads", &c.threads, threadOf),
 		rows("collars", &c.collars, collarOf),
+		rows("push_rings", &c.pushRings, pushRingOf),
+		rows("rod_ends", &c.rodEnds, rodEndOf),
+		rows("standoffs", &c.standoffs, standoffOf),
 		rows("iso286", &c.zones, zoneOf),
 	)
 	if err != nil {

@@ -174,6 +174,13 @@ func (s Screw) Grip(length float64) float64 {
 	return max(0, length-s.Thread)
 }
 
+// Shank is the part under the head that is surely without thread on a screw of a length, mm: five pitches
+// less than the longest, by which the run-out may be longer (ISO 4014 and ISO 4762: l_s min = l_g max -
+// 5 P; from memory).
+func (s Screw) Shank(length float64) float64 {
+	return max(0, s.Grip(length)-5*s.Pitch)
+}
+
 // Designation writes the screw as it is ordered: "ISO 4762 M4x20"; without a length when it is 0.
 func (s Screw) Designation(length float64) string {
 	if length == 0 {
