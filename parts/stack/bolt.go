@@ -9,9 +9,11 @@ import (
 )
 
 // choose gives the bolt for a budget: the shortest standard length of which even the shortest screw
-// reaches past the nut on the thickest stack. A hexagon bolt is taken with a shank when it has that
-// length and the nut stays off the shank on the thinnest stack: links turn better on a shank.
-func (f *fitting) choose(b Budget) (Through, error) {
+// reaches past the nut on the thickest stack, and which is not longer by more than the excess. The nut
+// next to the head must stay off the shank on the thinnest stack. A hexagon bolt is taken with a shank
+// where one suits; and of any screw the next length, when its shank carries all that turns, top mm from
+// the head, and that of the shortest does not: links turn better on a shank.
+func (f *fitting) choose(b Budget, firstNut, top float64) (Through, error) {
 	t := Through{Diameter: f.diameter(), Need: b.Most}
 	if f.nut != nil {
 		pitches := PitchesPastNut
@@ -29,23 +31,59 @@ func (f *fitting) choose(b Budget) (Through, error) {
 		t.Designation = f.screw.Designation(0)
 		return t, nil
 	}
-	if shanked, err := f.screw.Shanked(); err == nil {
-		if l, err := shanked.SureLength(t.Need); err == nil && shanked.Grip(l) <= b.Least+slack {
+	plain := f.screw
+	if shanked, err := plain.Shanked(); err == nil {
+		if l, err := f.length(shanked, t.Need, firstNut, top); err == nil {
 			f.screw = shanked
+			t.Designation, t.Length, t.Excess = shanked.Designation(l), l, tidy(l-t.Need)
+			return t, nil
 		}
 	}
-	length, err := f.screw.SureLength(t.Need)
+	l, err := f.length(plain, t.Need, firstNut, top)
 	if err != nil {
-		return t, f.tooLong(err)
+		return t, err
 	}
-	if grip := f.screw.Grip(length); f.nut != nil && grip > b.Least+slack {
-		return t, fmt.Errorf(
-			"joint %s: the thread of %s begins up to %.1f mm under the head, and the thinnest stack is %.1f mm: the nut would stop on the shank; say head: hexagon, which is threaded to the head",
-			f.pin.Joint, f.screw.Designation(length), grip, b.Least)
-	}
-	t.Designation = f.screw.Designation(length)
-	t.Length, t.Excess = length, tidy(length-t.Need)
+	t.Designation, t.Length, t.Excess = plain.Designation(l), l, tidy(l-t.Need)
 	return t, nil
+}
+
+// length gives the length of a screw for a need.
+func (f *fitting) length(s hardware.Screw, need, firstNut, top float64) (float64, error) {
+	l, err := s.SureLength(need)
+	if err != nil {
+		return 0, f.tooLong(err)
+	}
+	most := f.excess()
+	suits := func(l float64) error {
+		if grip := s.Grip(l); f.nut != nil && grip > firstNut+slack {
+			return fmt.Errorf(
+				"joint %s: the thread of %s begins up to %.1f mm under the head, and the thinnest stack up to the first nut is %.1f mm: the nut would stop on the shank, and %d washers under it do not help; say head: hexagon, which is threaded to the head",
+				f.pin.Joint, s.Designation(l), grip, firstNut, mostUnder)
+		}
+		if f.nut != nil && l-need > most+slack {
+			return fmt.Errorf(
+				"joint %s: the bolt needs %.1f mm, the next standard length is %s, and %.1f mm too long is more than the excess of %g mm; %d washers under the nut do not help: say excess: %gmm, or take another head or other washers",
+				f.pin.Joint, need, s.Designation(l), l-need, most, mostUnder, math.Ceil(l-need))
+		}
+		return nil
+	}
+	if err := suits(l); err != nil {
+		return 0, err
+	}
+	if s.Shank(l) < top-slack {
+		if next, err := s.SureLength(l + 0.5); err == nil && suits(next) == nil && s.Shank(next) >= top-slack {
+			return next, nil
+		}
+	}
+	return l, nil
+}
+
+// excess is how much longer than it must be the bolt may be, mm.
+func (f *fitting) excess() float64 {
+	if f.pin.Excess > 0 {
+		return f.pin.Excess
+	}
+	return MostExcess
 }
 
 // tooLong says which planes ask for more than there is.

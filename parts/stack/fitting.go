@@ -1,7 +1,6 @@
 package stack
 
 import (
-	"errors"
 	"fmt"
 	"slices"
 	"strings"
@@ -21,13 +20,21 @@ type fitting struct {
 	screw   hardware.Screw
 	nut     *hardware.Nut
 	washer  *hardware.Washer
-	spacer  float64 // outside diameter of spacers
+	spacer  float64       // outside diameter of spacers
+	stock   []float64     // the lengths in which spacers are bought; nil: they are cut to length
+	jam     *hardware.Nut // that clamps a link to the bolt, beside the pin's own nut
+	rodEnd  *hardware.RodEnd
 	notes   []string
 }
 
 // fitOut looks up everything that a pin needs.
 func fitOut(j job.Job, pin job.Pin) (fitting, error) {
 	f := fitting{pin: pin}
+	if j.Spacers.Stock {
+		if f.stock = j.Spacers.Lengths; len(f.stock) == 0 {
+			f.stock = hardware.SpacerLengths()
+		}
+	}
 	var err error
 	if f.members, err = members(j, pin); err != nil {
 		return f, err
@@ -54,12 +61,25 @@ func fitOut(j job.Job, pin job.Pin) (fitting, error) {
 	if err := f.bolt(); err != nil {
 		return fail(err)
 	}
-	if pin.Kind == job.BearingPin {
-		if err := f.bearing(); err != nil {
-			return fail(err)
-		}
+	if err := f.kind(); err != nil {
+		return fail(err)
 	}
 	return f, nil
+}
+
+// kind looks up what a kind of pin has besides bolt, nut and washers.
+func (f *fitting) kind() error {
+	switch f.pin.Kind {
+	case job.BearingPin:
+		return f.bearing()
+	case job.SleevePin:
+		return f.sleeves()
+	case job.ClampPin:
+		return f.clamp()
+	case job.RodEndPin:
+		return f.ball()
+	}
+	return nil
 }
 
 // bolt looks up screw, nut and washer.
@@ -167,60 +187,6 @@ func (f *fitting) shaft() error {
 	if err != nil {
 		return fmt.Errorf("%w; say washer: none", err)
 	}
-	return nil
-}
-
-// bearing puts the bearing into its seats, and takes a washer that stays off its outer ring.
-func (f *fitting) bearing() error {
-	b, err := hardware.BearingFor(f.pin.Bearing)
-	if err != nil {
-		return err
-	}
-	if d := f.diameter(); d > b.Bore {
-		return fmt.Errorf("bolt %s of %g mm does not go through the bore of bearing %s, %g mm", f.size, d, b.Designation, b.Bore)
-	}
-	if len(f.pin.Seats) == 0 {
-		return errors.New("no part is named that the bearing sits in")
-	}
-	for _, seat := range f.pin.Seats {
-		i := slices.IndexFunc(f.members, func(m member) bool { return m.name == seat })
-		if i < 0 {
-			return fmt.Errorf("the bearing is to sit in %s, which is not on this joint", seat)
-		}
-		f.members[i].seat = &b
-	}
-	// What is not on a bearing is clamped by the bolt: two links there could not turn on each other.
-	clamped := ""
-	for _, m := range f.members {
-		if m.seat != nil {
-			continue
-		}
-		body := m.name
-		if m.plate {
-			body = "the frame"
-		}
-		if clamped != "" && clamped != body {
-			return fmt.Errorf("the bolt clamps %s and %s together, and they could not turn on each other: give one of them a bearing too (in: [%s, %s])",
-				clamped, body, strings.Join(f.pin.Seats, ", "), m.name)
-		}
-		clamped = body
-	}
-	if b.Other != 0 && b.Other != b.Width && !b.Shielded {
-		f.notes = append(f.notes, fmt.Sprintf("Bearing %s is the open form, %g mm wide; the shielded %sZZ is %g mm wide: buy what the list says.", b.Designation, b.Width, b.Designation, b.Other))
-	}
-	if f.washer == nil {
-		return nil
-	}
-	limit := b.InnerRing()
-	if f.washer.Outside > limit && f.washer.Kind != hardware.SmallWasher {
-		if small, err := hardware.WasherFor(hardware.SmallWasher, f.as); err == nil {
-			f.washer = &small
-		}
-	}
-	if f.washer.Outside > limit {
-		f.notes = append(f.notes, fmt.Sprintf("Washer %s is %g mm wide and may rub on the outer ring of bearing %s, which begins at about %.1f mm: turn it down, or use shim rings as thick.", f.washer.Designation(), f.washer.Outside, b.Designation, limit))
-	}
-	f.spacer = min(f.spacer, limit)
 	return nil
 }
 

@@ -19,6 +19,8 @@ type member struct {
 	material    string
 	held        bool // fast on the shaft
 	seat        *hardware.Bearing
+	sleeve      float64 // length of the sleeve on which it turns, mm; 0: none
+	clamped     bool    // the bolt is clamped to it
 }
 
 // bottom and top are where the stack on the pin meets the member, over the slab's lower face: those of
@@ -32,6 +34,9 @@ func (m member) bottom() float64 {
 }
 
 func (m member) top() float64 {
+	if m.sleeve > 0 {
+		return m.sleeve
+	}
 	if m.seat != nil {
 		return m.bottom() + m.seat.Width
 	}
@@ -42,6 +47,9 @@ func (m member) top() float64 {
 func (m member) limits() (least, most float64) {
 	if m.seat != nil {
 		return m.seat.Width - bearingNarrow, m.seat.Width
+	}
+	if m.sleeve > 0 {
+		return m.sleeve - SleeveTolerance, m.sleeve + SleeveTolerance
 	}
 	return m.least, m.most
 }

@@ -147,7 +147,7 @@ func (p *plan) crossings(lower, upper int) []crossing {
 		for k := 1; k < len(f.members); k++ {
 			if a, b := f.members[k-1], f.members[k]; a.plane <= lower && b.plane == upper {
 				below := p.from[lower] + p.slabs[lower] - p.from[a.plane]
-				out = append(out, crossing{f.washerThickness(), below - a.top() + b.bottom()})
+				out = append(out, crossing{f.washerThickness(), below - a.top() + b.bottom() - f.jamHeight(k), f.stock})
 			}
 		}
 	}

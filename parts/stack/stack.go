@@ -27,9 +27,21 @@ import "pinwright/parts/job"
 
 // Allowances of the axial budget. Common practice, no source, except where stated.
 const (
-	// EndPlay is left under the nut of a bolt on which links turn, and beside a collar: 0.1 to 0.2 mm
-	// is usual, the larger takes the lengths.
-	EndPlay = 0.2
+	// LeastPlay and EndPlay are left under the nut of a bolt on which links turn, and beside a collar,
+	// when the job does not say: 0.1 to 0.2 mm is usual, the larger takes the lengths.
+	LeastPlay = 0.1
+	EndPlay   = 0.2
+
+	// SleevePlay is the most by which a sleeve is longer than what turns on it, when the job does not say:
+	// what is left of the tolerances of a measured sheet and of the sleeve.
+	SleevePlay = 0.4
+
+	// SleeveTolerance is how far a sleeve may be off its length: cut, and filed to a gauge.
+	SleeveTolerance = 0.05
+
+	// MostExcess is how much longer than it must be a bolt may be, when the job does not say: the
+	// lengths of ISO 888 have steps of up to 10 mm here, and a short one of their tolerance may be missing.
+	MostExcess = 12.0
 
 	// MostPlay is what washers may leave of a gap.
 	MostPlay = 0.3
@@ -65,23 +77,38 @@ const (
 	SpacerElement  ElementKind = "spacer"
 	PartElement    ElementKind = "part"    // a link or a frame plate
 	BearingElement ElementKind = "bearing" // in the part before it in the list
-	CollarElement  ElementKind = "collar"
+	CollarElement  ElementKind = "collar"  // set collar or push-on ring
+	SleeveElement  ElementKind = "sleeve"  // in the part before it in the list, which turns on it
+	RodEndElement  ElementKind = "rod end" // as thick as its ball
 )
 
 // Element is one thing on a pin.
 type Element struct {
 	Kind      ElementKind
 	What      string  // designation: "ISO 7089 4"; of a part empty
-	Part      string  // link or frame plate, of parts and bearings
+	Part      string  // link or frame plate, of parts, bearings and sleeves
 	Thickness float64 // nominal; of a spacer its length
 	From, To  float64 // heights
 	Diameter  float64 // outside, largest; 0 for parts
 }
 
 // Budget is the axial sum between the head and the nut (for shafts between the ends), all play
-// included in the greatest alone.
+// included in the greatest alone. Bolts are chosen on the worst case.
 type Budget struct {
-	Least, Nominal, Most float64
+	Least, Nominal, Most float64 // worst case: every tolerance at its limit
+
+	// Root-sum-square: the tolerances added as the square root of the sum of their squares, about the
+	// middle of the limits. If they are independent and each spreads evenly about its middle with its
+	// limits at three standard deviations, so are these.
+	LikelyLeast, LikelyMost float64
+
+	squares float64 // sum of the squares of half the tolerances
+}
+
+// Turning is the axial play of a part on its sleeve.
+type Turning struct {
+	Part string
+	Play Budget
 }
 
 // Through is the bolt or shaft that everything sits on.
@@ -103,9 +130,11 @@ type Kit struct {
 	Elements []Element
 	Through  Through
 	Budget   Budget
-	Play     float64  // axial play that is left on the nominal stack: end play and what washers leave
-	Open     bool     // the pin goes on into something that is not in the job
-	Notes    []string // plain sentences for whoever assembles; may be empty
+	Play     float64   // axial play that is left on the nominal stack: end play and what washers leave
+	Turning  []Turning // the parts that turn on a sleeve, in the order of the stack
+	Washers  int       // how many of its washers were put under the nut so that the bolt is not too long
+	Open     bool      // the pin goes on into something that is not in the job
+	Notes    []string  // plain sentences for whoever assembles; may be empty
 }
 
 // Level is where a plane lies.

@@ -80,7 +80,7 @@ func TestGripLength(t *testing.T) {
 		{3*3 + 2*0.5, 15.0, 16},
 		{3*3.7 + 2*0.55, 17.2, 20},
 	} {
-		through, err := f.choose(Budget{c.stack, c.stack, c.stack})
+		through, err := f.choose(Budget{Least: c.stack, Nominal: c.stack, Most: c.stack}, c.stack, 0)
 		if err != nil || !near(through.Need, c.need) || through.Length != c.want {
 			t.Errorf("stack of %g: need %g, length %g, want %g and %g (%v)", c.stack, through.Need, through.Length, c.need, c.want, err)
 		}
