@@ -5,6 +5,7 @@ import (
 	"math"
 	"slices"
 
+	"pinwright/parts/hardware"
 	"pinwright/parts/job"
 	"pinwright/parts/linkage"
 	"pinwright/parts/outline"
@@ -93,6 +94,22 @@ func (k *maker) plate(c job.Copy, f *job.Frame, plate job.FramePlate, crosses []
 			wanted, _ := r.hole(d.hole)
 			discs = append(discs, outline.Disc{Centre: at, Radius: wanted})
 			n.covers = append(n.covers, outline.Disc{Centre: at, Radius: diameter})
+			add(d)
+		}
+	}
+	if s := f.Standoffs; s != nil {
+		size, err := hardware.BoltHole(s.Bolt, s.Fit)
+		if err != nil {
+			k.fail("frame.standoffs", "", "standoffs: %v", err)
+		}
+		for i, at := range s.At {
+			if err != nil {
+				break
+			}
+			d := round(fmt.Sprintf("standoff %d", i+1), BoltHole, "", at, size.Diameter)
+			wanted, _ := r.hole(d.hole)
+			discs = append(discs, outline.Disc{Centre: at, Radius: wanted})
+			n.covers = append(n.covers, outline.Disc{Centre: at, Radius: size.Diameter})
 			add(d)
 		}
 	}

@@ -65,6 +65,8 @@ func (p plan) itemOf(e stack.Element) steps.Item {
 		return steps.Item{Part: p.partAt(e)}
 	case stack.BearingElement:
 		return steps.Item{What: "bearing " + e.What, Part: p.partAt(e), Seat: true}
+	case stack.SleeveElement:
+		return steps.Item{What: fmt.Sprintf("the sleeve of %s mm", strconv.FormatFloat(e.Thickness, 'f', -1, 64))}
 	case stack.SpacerElement:
 		return steps.Item{What: fmt.Sprintf("the spacer of %s mm", strconv.FormatFloat(e.Thickness, 'f', -1, 64))}
 	}

@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"slices"
 	"strconv"
+	"strings"
 
 	"pinwright/export/files"
 	"pinwright/export/picture"
@@ -112,12 +113,14 @@ func (p plan) firstKits() []stack.Kit {
 	return out
 }
 
-// seatIn is the diameter of the bearing that sits in a part of a kit, 0 for none.
+// seatIn is the diameter of the bearing or the sleeve that sits in a part of a kit, 0 for none.
 func seatIn(k stack.Kit, e stack.Element) float64 {
 	if e.Kind != stack.PartElement {
 		return 0
 	}
-	i := slices.IndexFunc(k.Elements, func(b stack.Element) bool { return b.Kind == stack.BearingElement && b.Part == e.Part })
+	i := slices.IndexFunc(k.Elements, func(b stack.Element) bool {
+		return (b.Kind == stack.BearingElement || b.Kind == stack.SleeveElement) && b.Part == e.Part
+	})
 	if i < 0 {
 		return 0
 	}
@@ -139,6 +142,13 @@ func pieceOf(e stack.Element, pin float64) picture.Piece {
 		piece.Kind, piece.Name = picture.SpacerPiece, "spacer"
 	case stack.CollarElement:
 		piece.Kind, piece.Name = picture.SpacerPiece, "collar"
+		if strings.HasPrefix(e.What, "push-on") {
+			piece.Name = "push-on ring"
+		}
+	case stack.SleeveElement:
+		piece.Kind, piece.Name = picture.SeatPiece, "sleeve"
+	case stack.RodEndElement:
+		piece.Kind, piece.Name = picture.SpacerPiece, "rod end"
 	case stack.BearingElement:
 		piece.Kind, piece.Name = picture.SeatPiece, "bearing "+e.What
 	default:

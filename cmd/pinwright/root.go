@@ -78,7 +78,7 @@ command line is wrong; 3 a file could not be read or written.
 		RunE:          func(c *cobra.Command, _ []string) error { return c.Help() },
 	}
 	root.SetVersionTemplate("pinwright {{.Version}}\n")
-	root.AddCommand(cutCommand(t), checkCommand(t), proofCommand(t), newCommand(t), fitCommand(t))
+	root.AddCommand(cutCommand(t), checkCommand(t), listCommand(t), proofCommand(t), newCommand(t), fitCommand(t))
 	return root
 }
 

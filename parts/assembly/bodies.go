@@ -77,7 +77,8 @@ func ofParts(j job.Job, list []parts.Part, levels []stack.Level) []thing {
 			out = append(out, t)
 		}
 	}
-	return append(out, ofCrossMembers(j, levels)...)
+	out = append(out, ofCrossMembers(j, levels)...)
+	return append(out, ofStandoffs(j)...)
 }
 
 // ofCrossMembers makes bodies of what stands between the outermost frame plates: seen from above, the

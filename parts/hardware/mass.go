@@ -56,6 +56,15 @@ func (c Collar) Mass() float64 {
 	return Steel * (cylinder(c.Outside, c.Width) - cylinder(c.Bore, c.Width))
 }
 
+// Aluminium is the density by which the masses of spacers and sleeves are estimated, g/mm3 (the usual
+// alloys have 2.7 g/cm3; from memory).
+const Aluminium = 2.70e-3
+
+// TubeMass gives the mass of a piece of aluminium tube, g.
+func TubeMass(bore, outside, length float64) float64 {
+	return Aluminium * (cylinder(outside, length) - cylinder(bore, length))
+}
+
 // ShaftMass gives the mass of a plain steel shaft, g.
 func ShaftMass(diameter, length float64) float64 { return Steel * cylinder(diameter, length) }
 

@@ -21,6 +21,7 @@ type fitting struct {
 	nut     *hardware.Nut
 	washer  *hardware.Washer
 	spacer  float64       // outside diameter of spacers
+	usual   float64       // the same where no bearing asks for slimmer ones
 	stock   []float64     // the lengths in which spacers are bought; nil: they are cut to length
 	jam     *hardware.Nut // that clamps a link to the bolt, beside the pin's own nut
 	rodEnd  *hardware.RodEnd
@@ -116,6 +117,7 @@ func (f *fitting) washers(of func(hardware.WasherKind) (hardware.Washer, error))
 	if small, err := of(hardware.SmallWasher); err == nil {
 		f.spacer = small.Outside
 	}
+	f.usual = f.spacer
 	if f.pin.Washer == "none" {
 		return nil
 	}

@@ -122,6 +122,9 @@ func (p *plan) parts(f *fitting, pl *pile) error {
 			if err != nil {
 				return fault(p.job, pinKey(p.job, f.pin.Joint), err.Error(), "")
 			}
+			if tube := p.job.Spacers.Tube; tube > 0 && fl.spacer > tube {
+				return fault(p.job, "spacers", fmt.Sprintf("joint %s: its spacer of %g mm is longer than the tube of %g mm", f.pin.Joint, fl.spacer, tube), "get longer tube, or bring the planes nearer")
+			}
 			if f.jamUnder(i) && f.jamFirst() {
 				pl.putJam(f)
 			}
@@ -165,6 +168,9 @@ func (p *plan) filling(f *fitting, pl *pile, fl filling) {
 		what := "spacer for " + f.size
 		if f.pin.Kind == job.ShaftPin {
 			what = fmt.Sprintf("spacer for %g mm shaft", f.pin.Shaft)
+		}
+		if f.spacer < f.usual-slack {
+			what += fmt.Sprintf(", outside %.3g mm", f.spacer)
 		}
 		pl.put(Element{Kind: SpacerElement, What: what, Thickness: fl.spacer, Diameter: f.spacer})
 		pl.kit.Budget.add(fl.spacer-SpacerTolerance, fl.spacer, fl.spacer+SpacerTolerance)

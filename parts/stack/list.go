@@ -14,7 +14,7 @@ import (
 // LineKind is the shelf on which a thing lies.
 type LineKind string
 
-// The kinds of line, in the order of the list.
+// The kinds of line.
 const (
 	ScrewLine      LineKind = "bolt"
 	NutLine        LineKind = "nut"
@@ -23,10 +23,15 @@ const (
 	BearingLine    LineKind = "bearing"
 	ShaftLine      LineKind = "shaft"
 	CollarLine     LineKind = "collar"
+	SleeveLine     LineKind = "sleeve"
+	TubeLine       LineKind = "tube"
+	StandoffLine   LineKind = "standoff"
+	RodEndLine     LineKind = "rod end"
 	ConsumableLine LineKind = "consumable"
 )
 
-var shelf = []LineKind{ScrewLine, NutLine, WasherLine, SpacerLine, BearingLine, ShaftLine, CollarLine, ConsumableLine}
+// shelf is the order of the list.
+var shelf = []LineKind{ScrewLine, NutLine, WasherLine, SpacerLine, SleeveLine, StandoffLine, TubeLine, BearingLine, RodEndLine, ShaftLine, CollarLine, ConsumableLine}
 
 // Line is one thing to buy or to cut to length.
 type Line struct {
@@ -34,13 +39,14 @@ type Line struct {
 	Designation string
 	Length      float64 // mm; 0 where a length means nothing or is not known
 	Diameter    float64 // nominal size, by which the list is sorted, mm
+	Outside     float64 // of spacers, sleeves and tube, mm; 0: of no matter
 	Need        int     // built in
 	Spare       int
 	Buy         int
 	Pack        int      // pieces in a pack; 0: sold or cut singly
 	Packs       int      // packs to buy; 0 likewise
 	Mass        float64  // of what is built in, g, an estimate; 0: not known
-	Joints      []string // where it is used, in the order of the pins; "mount", "hub"
+	Joints      []string // where it is used, in the order of the pins; "mount", "hub", "frame"
 	Note        string
 }
 
@@ -69,7 +75,7 @@ func List(j job.Job, kits []Kit) []Line {
 	var lines []Line
 	add := func(l Line, joint string) {
 		i := slices.IndexFunc(lines, func(o Line) bool {
-			return o.Kind == l.Kind && o.Designation == l.Designation && math.Abs(o.Length-l.Length) < 0.05
+			return o.Kind == l.Kind && o.Designation == l.Designation && math.Abs(o.Length-l.Length) < 0.005
 		})
 		if i < 0 {
 			i = len(lines)
@@ -88,16 +94,22 @@ func List(j job.Job, kits []Kit) []Line {
 	for _, k := range kits {
 		add(throughLine(k), k.Joint)
 		for _, e := range k.Elements {
-			if l, ok := elementLine(k, e); ok {
+			if l, ok := elementLine(j, k, e); ok {
 				add(l, k.Joint)
 			}
 		}
-		if k.Pin.Kind == job.BoltPin && (k.Pin.Nut == "plain" || k.Pin.Nut == "thin") {
+		if rubs(j, k) {
+			add(Line{Kind: ConsumableLine, Designation: "washers of low friction", Note: "thin ones of nylon or PTFE, or a dry lubricant: acrylic rubs on acrylic there"}, k.Joint)
+		}
+		if (k.Pin.Kind == job.BoltPin || k.Pin.Kind == job.ClampPin) && (k.Pin.Nut == "plain" || k.Pin.Nut == "thin") {
 			add(Line{Kind: ConsumableLine, Designation: "thread lock, medium", Note: "one small bottle, for axles without locknut"}, k.Joint)
 		}
 	}
 	for _, l := range extras(j) {
 		add(l, l.Joints[0])
+	}
+	for _, l := range standoffLines(j) {
+		add(l, "frame")
 	}
 	for i := range lines {
 		l := &lines[i]
@@ -107,8 +119,14 @@ func List(j job.Job, kits []Kit) []Line {
 		}
 		l.Spare = spare(l.Need, j.Spare)
 		l.Buy = l.Need + l.Spare
-		if l.Kind == ScrewLine || l.Kind == NutLine || l.Kind == WasherLine {
+		if l.Kind == ScrewLine || l.Kind == NutLine || l.Kind == WasherLine || l.Kind == SpacerLine && j.Spacers.Stock {
 			l.Pack, l.Packs = packed(l.Buy)
+		}
+	}
+	// Build has seen that every piece is shorter than the tube.
+	if tubes, err := Tubes(j, lines); err == nil {
+		for _, t := range tubes {
+			lines = append(lines, tubeLine(t))
 		}
 	}
 	slices.SortStableFunc(lines, func(a, b Line) int {
@@ -143,8 +161,27 @@ func throughLine(k Kit) Line {
 	return l
 }
 
+// standoffLines are the standoffs of all copies with their screws and washers: a washer under every head,
+// and those that lie on the standoffs.
+func standoffLines(j job.Job) []Line {
+	if j.Frame == nil || j.Frame.Standoffs == nil {
+		return nil
+	}
+	s, err := Standoffs(j)
+	if err != nil || s == nil {
+		return nil
+	}
+	n := max(1, len(j.Copies)) * len(s.At)
+	d, _ := hardware.BoltDiameter(j.Frame.Standoffs.Bolt) // looked up before
+	return []Line{
+		{Kind: ScrewLine, Designation: s.Screw, Length: s.ScrewLength, Diameter: d, Need: 2 * n, Mass: float64(2*n) * s.screwMass},
+		{Kind: WasherLine, Designation: s.Washer, Diameter: d, Need: (2 + s.Washers) * n, Mass: float64((2+s.Washers)*n) * s.washerMass},
+		{Kind: StandoffLine, Designation: s.Designation, Length: s.Length, Diameter: d, Need: n, Mass: float64(n) * s.mass, Note: "thread in both ends"},
+	}
+}
+
 // elementLine is the line of an element; false for parts and heads.
-func elementLine(k Kit, e Element) (Line, bool) {
+func elementLine(j job.Job, k Kit, e Element) (Line, bool) {
 	l := Line{Designation: e.What, Diameter: k.Through.Diameter, Need: 1}
 	size := k.Pin.Bolt
 	if k.Pin.Kind == job.ShaftPin {
@@ -160,12 +197,28 @@ func elementLine(k Kit, e Element) (Line, bool) {
 		}
 	case NutElement:
 		l.Kind = NutLine
-		if n, err := hardware.NutFor(hardware.NutKind(k.Pin.Nut), size); err == nil {
-			l.Mass = n.Mass()
+		for _, kind := range []hardware.NutKind{hardware.NutKind(k.Pin.Nut), hardware.ThinNut} {
+			if n, err := hardware.NutFor(kind, size); err == nil && n.Designation() == e.What {
+				l.Mass = n.Mass()
+			}
 		}
 	case SpacerElement:
-		l.Kind, l.Length = SpacerLine, e.Thickness
+		l.Kind, l.Length, l.Outside = SpacerLine, e.Thickness, e.Diameter
+		l.Mass = hardware.TubeMass(k.Through.Diameter, e.Diameter, e.Thickness)
 		l.Note = fmt.Sprintf("cut from tube, outside about %g mm, ends square", e.Diameter)
+		if j.Spacers.Stock {
+			l.Note = fmt.Sprintf("stock length, outside about %g mm", e.Diameter)
+		}
+	case SleeveElement:
+		l.Kind, l.Length, l.Outside = SleeveLine, e.Thickness, e.Diameter
+		l.Mass = hardware.TubeMass(k.Through.Diameter, e.Diameter, e.Thickness)
+		l.Note = "cut from tube, filed to length"
+	case RodEndElement:
+		l.Kind = RodEndLine
+		if r, err := hardware.RodEndFor(k.Through.Diameter); err == nil {
+			l.Mass = r.Mass()
+			l.Note = fmt.Sprintf("ball %g mm wide, eye %g mm; from memory: measure it", r.Width, r.Outside)
+		}
 	case BearingElement:
 		l.Kind = BearingLine
 		if b, err := hardware.BearingFor(e.What); err == nil {
@@ -174,8 +227,11 @@ func elementLine(k Kit, e Element) (Line, bool) {
 		}
 	case CollarElement:
 		l.Kind = CollarLine
-		if c, err := hardware.CollarFor(k.Pin.Shaft); err == nil {
+		if c, err := hardware.CollarFor(k.Pin.Shaft); err == nil && c.Designation() == e.What {
 			l.Mass = c.Mass()
+		}
+		if r, err := hardware.PushRingFor(k.Pin.Shaft); err == nil && r.Designation() == e.What {
+			l.Mass = r.Mass()
 		}
 	default:
 		return Line{}, false

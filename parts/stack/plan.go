@@ -2,6 +2,7 @@ package stack
 
 import (
 	"errors"
+	"fmt"
 	"slices"
 
 	"pinwright/parts/job"
@@ -16,6 +17,8 @@ type plan struct {
 	unsure   map[int]bool    // planes whose sheets are not all measured
 	from     map[int]float64 // height of the lower face
 	levels   []Level
+	pillar   *pillar
+	standoff *Standoff
 	kits     []Kit // one for every fitting, in their order; of one copy
 }
 
@@ -31,6 +34,10 @@ func newPlan(j job.Job) (*plan, error) {
 		}
 		p.fittings = append(p.fittings, f)
 	}
+	var err error
+	if p.pillar, err = findPillar(j); err != nil {
+		errs = append(errs, err)
+	}
 	if len(errs) > 0 {
 		return nil, errors.Join(errs...)
 	}
@@ -38,7 +45,9 @@ func newPlan(j job.Job) (*plan, error) {
 	p.kits = make([]Kit, len(p.fittings))
 	for i, plane := range p.planes {
 		if i > 0 {
-			p.gap(p.planes[i-1], plane)
+			if err := p.gap(p.planes[i-1], plane); err != nil {
+				return nil, fault(j, "frame.standoffs", fmt.Sprintf("standoffs: %v", err), "")
+			}
 		}
 		p.levels = append(p.levels, Level{Plane: plane, From: p.from[plane], To: tidy(p.from[plane] + p.slabs[plane])})
 		for k := range p.fittings {
@@ -51,6 +60,12 @@ func newPlan(j job.Job) (*plan, error) {
 				errs = append(errs, err)
 			}
 			p.kits[k] = kit
+		}
+	}
+	if p.pillar != nil {
+		from := tidy(p.from[p.pillar.low] + p.pillar.sheet.Measured)
+		if p.standoff, err = p.pillar.stand(from, p.from[p.pillar.high]); err != nil {
+			errs = append(errs, fault(j, "frame.standoffs", fmt.Sprintf("standoffs: %v", err), ""))
 		}
 	}
 	return p, errors.Join(errs...)
@@ -87,7 +102,7 @@ func (p *plan) levelTop() float64 {
 }
 
 // gap finds where the next plane with parts begins, and lays the empty planes between.
-func (p *plan) gap(lower, upper int) {
+func (p *plan) gap(lower, upper int) error {
 	empty := upper - lower - 1
 	washer := p.widestWasher(lower, upper)
 	least := washer
@@ -95,8 +110,15 @@ func (p *plan) gap(lower, upper int) {
 		t := max(p.slabs[lower], p.slabs[upper])
 		least = max(float64(empty)*t+float64(empty+1)*washer, p.roomAbove(lower), p.roomBelow(upper))
 	}
-	gap := smallestGap(least, p.crossings(lower, upper))
+	crossings := p.crossings(lower, upper)
+	gap := smallestGap(least, crossings)
 	top := p.levelTop()
+	if p.pillar != nil && p.pillar.high == upper {
+		var err error
+		if gap, err = p.pillar.widen(gap, p.from[p.pillar.low]+p.pillar.sheet.Measured, top, crossings); err != nil {
+			return err
+		}
+	}
 	if empty > 0 {
 		each := (gap - float64(empty+1)*washer) / float64(empty)
 		for i := range empty {
@@ -105,6 +127,7 @@ func (p *plan) gap(lower, upper int) {
 		}
 	}
 	p.from[upper] = tidy(top + gap)
+	return nil
 }
 
 // widestWasher is the thickest washer of the pins with parts on both planes; of all pins when there is
