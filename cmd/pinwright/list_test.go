@@ -43,7 +43,7 @@ func TestListTubes(t *testing.T) {
 	if status != statusFine {
 		t.Fatalf("%s", errs)
 	}
-	if !strings.Contains(out, "tube for M5") || !strings.Contains(out, "of 100 mm, saw cut 1.5 mm") || !strings.Contains(out, "mm left") {
+	if !strings.Contains(out, "tube for 5 mm") || !strings.Contains(out, "of 100 mm, saw cut 1.5 mm") || !strings.Contains(out, "mm left") {
 		t.Errorf("%s", out)
 	}
 }

@@ -200,7 +200,7 @@ func (r *reader) pin(joint string, own, standard *value, links []string, at spot
 	if p.Kind != BearingPin && p.Kind != SleevePin && own.has("in") {
 		r.fail(own.get("in").at, "take it out", "%s: only a bearing or a sleeve sits in a link", where)
 	}
-	if own.has("nut") && p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin) {
+	if own.has("nut") && p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin || p.Kind == RodEndPin) {
 		r.fail(own.get("nut").at, "take it out", "%s: without a nut nothing is clamped", where)
 	}
 	return p

@@ -222,7 +222,7 @@ func drawPin(t *rapid.T, joint string, on []string) Pin {
 	if p.Kind != BearingPin && p.Kind != RodEndPin && rapid.Bool().Draw(t, "play") {
 		p.Play = [2]float64{mm(t, 0, 0.3, "least play"), mm(t, 0.4, 2, "most play")}
 	}
-	if p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin) {
+	if p.Nut == "none" && (p.Kind == SleevePin || p.Kind == ClampPin || p.Kind == RodEndPin) {
 		p.Nut = "lock"
 	}
 	switch p.Kind {

@@ -173,11 +173,16 @@ func standoffLines(j job.Job) []Line {
 	}
 	n := max(1, len(j.Copies)) * len(s.At)
 	d, _ := hardware.BoltDiameter(j.Frame.Standoffs.Bolt) // looked up before
-	return []Line{
-		{Kind: ScrewLine, Designation: s.Screw, Length: s.ScrewLength, Diameter: d, Need: 2 * n, Mass: float64(2*n) * s.screwMass},
-		{Kind: WasherLine, Designation: s.Washer, Diameter: d, Need: (2 + s.Washers) * n, Mass: float64((2+s.Washers)*n) * s.washerMass},
-		{Kind: StandoffLine, Designation: s.Designation, Length: s.Length, Diameter: d, Need: n, Mass: float64(n) * s.mass, Note: "thread in both ends"},
+	var out []Line
+	for i := range s.Screws {
+		out = append(out, Line{
+			Kind: ScrewLine, Designation: s.Screws[i], Length: s.Lengths[i], Diameter: d, Need: n, Mass: float64(n) * s.screwMass[i],
+		})
 	}
+	return append(out,
+		Line{Kind: WasherLine, Designation: s.Washer, Diameter: d, Need: (2 + s.Washers) * n, Mass: float64((2+s.Washers)*n) * s.washerMass},
+		Line{Kind: StandoffLine, Designation: s.Designation, Length: s.Length, Diameter: d, Need: n, Mass: float64(n) * s.mass, Note: "thread in both ends"},
+	)
 }
 
 // elementLine is the line of an element; false for parts and heads.

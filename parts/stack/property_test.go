@@ -11,6 +11,7 @@ import (
 
 	"pinwright/parts/hardware"
 	"pinwright/parts/job"
+	"pinwright/parts/outline"
 )
 
 // failer is what both kinds of test have.
@@ -59,14 +60,14 @@ func checkKits(t failer, j job.Job, kits []Kit, levels []Level) {
 				if math.Abs(e.From-l.From) > 1e-8 || e.To > l.To+1e-8 || math.Abs(e.Thickness-thick[e.Part]) > 1e-9 {
 					t.Errorf("%s: %+v does not lie on %+v", k.Joint, e, l)
 				}
-			case BearingElement: // it lies in its part
+			case BearingElement, SleeveElement: // it lies in its part
 				z = e.To
 				continue
 			}
 			if e.From < z-1e-8 {
 				t.Errorf("%s: %+v begins under %g", k.Joint, e, z)
 			}
-			if e.Kind != PartElement || k.Pin.Kind != job.BearingPin || !slices.Contains(k.Pin.Seats, e.Part) {
+			if e.Kind != PartElement || !slices.Contains(k.Pin.Seats, e.Part) {
 				z = e.To
 			}
 		}
@@ -145,22 +146,75 @@ func checkBolt(t failer, k Kit) {
 	if k.Pin.Nut != "none" && s.Grip(k.Through.Length) > k.Budget.Least+1e-9 {
 		t.Errorf("%s: the nut of %s stops on the shank: %g, stack %g", k.Joint, k.Through.Designation, s.Grip(k.Through.Length), k.Budget.Least)
 	}
-	sum := 0.0
-	for _, e := range k.Elements {
+	sum, firstNut := 0.0, math.Inf(1)
+	for i, e := range k.Elements {
 		switch e.Kind {
 		case PartElement:
-			if k.Pin.Kind != job.BearingPin || !slices.Contains(k.Pin.Seats, e.Part) {
+			if !slices.Contains(k.Pin.Seats, e.Part) {
 				sum += e.Thickness
 			}
-		case WasherElement, SpacerElement, BearingElement:
+		case WasherElement, SpacerElement, BearingElement, SleeveElement, RodEndElement:
 			sum += e.Thickness
+		case NutElement:
+			firstNut = min(firstNut, e.From-k.Through.From)
+			if i < len(k.Elements)-1 { // the thin one beside a clamped link
+				sum += e.Thickness
+			}
 		}
 	}
+	if s.Grip(k.Through.Length) > firstNut {
+		t.Errorf("%s: the first nut is %g mm from the head and the shank %g mm", k.Joint, firstNut, s.Grip(k.Through.Length))
+	}
+	checkKind(t, k)
 	if math.Abs(sum-k.Budget.Nominal) > 1e-8 || k.Budget.Least > sum || k.Budget.Most < sum+k.Play-1e-8 {
 		t.Errorf("%s: elements sum to %g, budget %+v", k.Joint, sum, k.Budget)
 	}
+	limit := MostExcess
+	if k.Pin.Excess > 0 {
+		limit = k.Pin.Excess
+	}
+	if k.Pin.Nut != "none" && k.Through.Excess > limit+1e-9 {
+		t.Errorf("%s: %g mm too long, %g mm may be", k.Joint, k.Through.Excess, limit)
+	}
+	if b := k.Budget; b.LikelyLeast < b.Least-1e-8 || b.LikelyMost > b.Most+1e-8 || b.LikelyLeast > b.LikelyMost {
+		t.Errorf("%s: root-sum-square outside of the worst case: %+v", k.Joint, b)
+	}
 	if k.Through.Excess < -1e-9 || math.Abs(k.Through.Length-k.Through.Need-k.Through.Excess) > 1e-8 {
 		t.Errorf("%s: %+v", k.Joint, k.Through)
+	}
+}
+
+// checkKind: what every kind of pin promises.
+func checkKind(t failer, k Kit) {
+	t.Helper()
+	switch k.Pin.Kind {
+	case job.SleevePin:
+		if len(k.Turning) != len(k.Pin.Seats) {
+			t.Errorf("%s: %d parts turn on sleeves, %d are to", k.Joint, len(k.Turning), len(k.Pin.Seats))
+		}
+		for _, x := range k.Turning {
+			if x.Play.Least < LeastPlay-1e-8 {
+				t.Errorf("%s: %s may have no more than %g mm of play", k.Joint, x.Part, x.Play.Least)
+			}
+		}
+	case job.ClampPin:
+		// A nut lies next to the clamped link but for a washer, and head or nut on its other side.
+		i := slices.IndexFunc(k.Elements, func(e Element) bool { return e.Kind == PartElement && e.Part == k.Pin.Clamped })
+		var under, over ElementKind
+		for n := i - 1; n >= 0 && (under == "" || under == WasherElement); n-- {
+			under = k.Elements[n].Kind
+		}
+		for n := i + 1; n < len(k.Elements) && (over == "" || over == WasherElement); n++ {
+			over = k.Elements[n].Kind
+		}
+		if over != NutElement || under != NutElement && under != HeadElement {
+			t.Errorf("%s: %s lies between %s and %s", k.Joint, k.Pin.Clamped, under, over)
+		}
+	case job.RodEndPin:
+		i := slices.IndexFunc(k.Elements, func(e Element) bool { return e.Kind == RodEndElement })
+		if i < 2 || k.Elements[i-1].Kind != WasherElement || k.Elements[i+1].Kind != WasherElement {
+			t.Errorf("%s: the ball lies bare: %v", k.Joint, k.Elements)
+		}
 	}
 }
 
@@ -169,22 +223,36 @@ func checkList(t failer, j job.Job, kits []Kit) {
 	t.Helper()
 	count := map[string]int{}
 	for _, k := range kits {
-		count[fmt.Sprintf("%s %.1f", k.Through.Designation, k.Through.Length)]++
+		count[fmt.Sprintf("%s %.2f", k.Through.Designation, k.Through.Length)]++
 		for _, e := range k.Elements {
 			switch e.Kind {
 			case PartElement, HeadElement:
-			case SpacerElement:
-				count[fmt.Sprintf("%s %.1f", e.What, e.Thickness)]++
+			case SpacerElement, SleeveElement:
+				count[fmt.Sprintf("%s %.2f", e.What, e.Thickness)]++
 			default:
-				count[e.What+" 0.0"]++
+				count[e.What+" 0.00"]++
 			}
 		}
 	}
-	for _, l := range List(j, kits) {
-		if l.Kind == ConsumableLine || len(l.Joints) > 0 && (l.Joints[0] == "mount" || l.Joints[0] == "hub") {
+	if s, err := Standoffs(j); err == nil && s != nil {
+		for range max(1, len(j.Copies)) * len(s.At) {
+			count[fmt.Sprintf("%s %.2f", s.Designation, s.Length)]++
+			for i := range s.Screws {
+				count[fmt.Sprintf("%s %.2f", s.Screws[i], s.Lengths[i])]++
+				count[s.Washer+" 0.00"]++
+			}
+			for range s.Washers {
+				count[s.Washer+" 0.00"]++
+			}
+		}
+	}
+	lines := List(j, kits)
+	checkTubes(t, j, lines)
+	for _, l := range lines {
+		if l.Kind == ConsumableLine || l.Kind == TubeLine || len(l.Joints) > 0 && (l.Joints[0] == "mount" || l.Joints[0] == "hub") {
 			continue
 		}
-		key := fmt.Sprintf("%s %.1f", l.Designation, l.Length)
+		key := fmt.Sprintf("%s %.2f", l.Designation, l.Length)
 		if count[key] != l.Need {
 			t.Errorf("%s: %d on the list, %d in the kits", key, l.Need, count[key])
 		}
@@ -195,6 +263,33 @@ func checkList(t failer, j job.Job, kits []Kit) {
 	}
 	if len(count) > 0 {
 		t.Errorf("in the kits and not on the list: %v", count)
+	}
+}
+
+// checkTubes: the tubes hold every spacer and sleeve that is to be bought, and no other.
+func checkTubes(t failer, j job.Job, lines []Line) {
+	t.Helper()
+	want, got, bars := 0, 0, 0
+	for _, l := range lines {
+		switch l.Kind {
+		case SpacerLine, SleeveLine:
+			want += l.Buy
+		case TubeLine:
+			bars += l.Buy
+		}
+	}
+	tubes, err := Tubes(j, lines)
+	if err != nil {
+		t.Errorf("%v", err)
+	}
+	for _, x := range tubes {
+		bars -= len(x.Plan.Bars)
+		for _, b := range x.Plan.Bars {
+			got += len(b.Cuts)
+		}
+	}
+	if j.Spacers.Tube > 0 && want != got || bars != 0 {
+		t.Errorf("%d pieces are to be cut and %d are; %d tubes too many on the list", want, got, bars)
 	}
 }
 
@@ -253,13 +348,26 @@ func drawJob(t *rapid.T) job.Job {
 		pin.Head = rapid.SampledFrom([]string{"socket", "button", "hexagon"}).Draw(t, "head")
 		pin.Nut = rapid.SampledFrom([]string{"lock", "plain", "thin", "none"}).Draw(t, "nut")
 		pin.Washer = rapid.SampledFrom([]string{"normal", "small", "large", "none"}).Draw(t, "washer")
-		switch rapid.IntRange(0, 3).Draw(t, "kind") {
+		if rapid.IntRange(0, 3).Draw(t, "play asked") == 0 && pin.Kind == job.BoltPin {
+			pin.Play = [2]float64{0.05, rapid.SampledFrom([]float64{0.2, 0.3, 0.6}).Draw(t, "most play")}
+		}
+		pin.Excess = rapid.SampledFrom([]float64{0, 0, 0, 3, 6}).Draw(t, "excess")
+		switch rapid.IntRange(0, 9).Draw(t, "kind") {
+		case 4, 5:
+			pin.Kind, pin.Bolt, pin.Sleeve, pin.Washer, pin.Play = job.SleevePin, "M4", 6, "large", [2]float64{}
+			pin.Seats = on[:max(1, len(on)-1)]
+		case 6, 8:
+			pin.Kind, pin.Clamped = job.ClampPin, lowest(links, joint)
+		case 7:
+			pin.Kind, pin.Bolt, pin.Play = job.RodEndPin, rapid.SampledFrom([]string{"M4", "M5", "M6"}).Draw(t, "rod end"), [2]float64{}
+			pin.RodEnd = rapid.SampledFrom([]job.Side{job.HeadSide, job.NutSide}).Draw(t, "side")
 		case 0:
 			pin.Kind, pin.Bolt = job.ShaftPin, ""
 			pin.Shaft = rapid.SampledFrom([]float64{3, 4, 5, 6, 8, 10}).Draw(t, "shaft")
 			pin.Fit = rapid.SampledFrom([]string{"running", "push"}).Draw(t, "fit")
+			pin.Retain = rapid.SampledFrom([]job.Retainer{"", job.CollarRetainer, job.RingRetainer}).Draw(t, "retain")
 		case 1:
-			pin.Kind, pin.Bolt = job.BearingPin, "M4"
+			pin.Kind, pin.Bolt, pin.Play = job.BearingPin, "M4", [2]float64{}
 			pin.Bearing = rapid.SampledFrom([]string{"624", "684", "684ZZ", "F624", "MR84", "MR104"}).Draw(t, "bearing")
 			pin.Seats = on[:max(1, len(on)-1)]
 		}
@@ -269,14 +377,41 @@ func drawJob(t *rapid.T) job.Job {
 	for i := range rapid.IntRange(1, 3).Draw(t, "copies") - 1 {
 		j.Copies = append(j.Copies, job.Copy{Name: fmt.Sprint("copy", i)})
 	}
+	switch rapid.IntRange(0, 3).Draw(t, "spacers") {
+	case 0:
+		j.Spacers.Stock = true
+	case 1:
+		j.Spacers.Tube, j.Spacers.Saw = 300, 1.5
+	}
+	if frame != nil && len(frame.Plates) == 2 && rapid.Bool().Draw(t, "standoffs") {
+		frame.Standoffs = &job.Standoffs{At: []outline.Point{{X: 1}, {Y: 2}}, Bolt: rapid.SampledFrom([]string{"M3", "M4"}).Draw(t, "standoff"), Fit: "medium"}
+	}
+	// Pins that cannot be built alone are errors of their own; the others are kept.
+	j.Pins = slices.DeleteFunc(j.Pins, func(p job.Pin) bool {
+		alone := j
+		alone.Pins = []job.Pin{p}
+		_, err := Build(alone)
+		return err != nil
+	})
 	j.Spare = job.Spare{Percent: rapid.Float64Range(0, 30).Draw(t, "percent"), Least: rapid.IntRange(0, 3).Draw(t, "least")}
 	return j
+}
+
+// lowest is the link on the lowest plane at a joint.
+func lowest(links []at, joint string) string {
+	best := -1
+	for i, l := range links {
+		if slices.Contains(l.pins, joint) && (best < 0 || l.plane < links[best].plane) {
+			best = i
+		}
+	}
+	return links[best].name
 }
 
 // Random jobs: either there is an error, or the kits, the levels and the list are what they must be, and
 // the same a second time.
 func TestRandomJobs(t *testing.T) {
-	built := 0
+	built, kinds := 0, map[job.PinKind]int{}
 	rapid.Check(t, func(t *rapid.T) {
 		j := drawJob(t)
 		kits, err := Build(j)
@@ -290,14 +425,17 @@ func TestRandomJobs(t *testing.T) {
 		}
 		checkKits(t, j, kits, levels)
 		checkList(t, j, kits)
+		for _, k := range kits {
+			kinds[k.Pin.Kind]++
+		}
 		again, err := Build(j)
 		if err != nil || !reflect.DeepEqual(kits, again) || !reflect.DeepEqual(List(j, kits), List(j, again)) {
 			t.Fatalf("not the same a second time: %v", err)
 		}
 	})
-	t.Logf("%d jobs built", built)
-	if built == 0 {
-		t.Error("no random job was built: the property was never tried")
+	t.Logf("%d jobs built: %v", built, kinds)
+	if len(kinds) < 5 { // the rarest may be missing by chance
+		t.Errorf("not every kind of pin was built: %v", kinds)
 	}
 }
 

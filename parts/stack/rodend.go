@@ -17,6 +17,9 @@ func (f *fitting) ball() error {
 	if f.pin.RodEnd != job.HeadSide && f.pin.RodEnd != job.NutSide {
 		return fmt.Errorf("the side of the rod end is %q: say rod-end: head or rod-end: nut", f.pin.RodEnd)
 	}
+	if f.nut == nil {
+		return errors.New("the ball of a rod end is clamped by a nut: say nut: lock")
+	}
 	e, err := hardware.RodEndFor(f.diameter())
 	if err != nil {
 		return err

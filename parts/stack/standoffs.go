@@ -19,13 +19,14 @@ type Standoff struct {
 	Diameter    float64         // outside, largest, mm
 	Washer      string          // designation
 	Washers     int             // between the standoff and the upper plate
-	Screw       string          // designation; one from either side, each with a washer under its head
-	ScrewLength float64         // standard length, mm
+	Screws      [2]string       // designations, the lower one first; each has a washer under its head
+	Lengths     [2]float64      // standard lengths of the screws, mm
 	From, To    float64         // heights of the inner faces of the two plates
 	Head        float64         // how far screw head and washer stand out of a plate, mm
 	HeadWide    float64         // diameter of the head, or of the washer where that is wider, mm
 
-	mass, screwMass, washerMass float64
+	mass, washerMass float64
+	screwMass        [2]float64
 }
 
 // Standoffs gives the standoffs of the frame, nil when it has none. Errors are those of Build.
@@ -138,33 +139,53 @@ func (p *pillar) stand(from, to float64) (*Standoff, error) {
 	if !ok || over > slack {
 		return nil, fmt.Errorf("no stock length of standoff %s fills %.2f mm", p.size.Size, to-from)
 	}
-	// The screw goes through washer and plate, and in by its diameter, or what there is of thread.
-	depth := p.size.Depth(l)
-	_, least, most := thickness(p.sheet)
-	need := most + p.washer.Most + min(p.screw.Diameter, depth)
-	length, err := p.screw.SureLength(need)
+	lower, err := p.screwLength(l, 0)
 	if err != nil {
 		return nil, err
 	}
-	// The washers on the standoff lie between it and the plate, and take of the upper screw.
-	if n > 0 {
-		if length, err = p.screw.SureLength(need + float64(n)*p.washer.Most); err != nil {
-			return nil, err
-		}
-	}
-	if in := length - least - p.washer.Least; in > depth+slack {
-		return nil, fmt.Errorf("screw %s goes %.1f mm into a standoff of %g mm, and there is room for %.1f mm: take a larger frame spacing or another size",
-			p.screw.Designation(length), in, l, depth)
+	upper, err := p.screwLength(l, n)
+	if err != nil {
+		return nil, err
 	}
 	s := &Standoff{
 		At: slices.Clone(p.rules.At), Length: l, Diameter: p.size.Across * 2 / math.Sqrt(3),
 		Designation: "hexagon standoff " + p.size.Size, Washer: p.washer.Designation(), Washers: n,
-		Screw: p.screw.Designation(length), ScrewLength: length, From: from, To: to,
+		Screws: [2]string{p.screw.Designation(lower), p.screw.Designation(upper)}, Lengths: [2]float64{lower, upper},
+		From: from, To: to,
 		Head: p.screw.HeadHeight + p.washer.Thickness, HeadWide: max(p.screw.HeadDiameter, p.washer.Outside),
-		mass: p.size.Mass(l, p.rules.Round), screwMass: p.screw.Mass(length), washerMass: p.washer.Mass(),
+		mass: p.size.Mass(l, p.rules.Round), screwMass: [2]float64{p.screw.Mass(lower), p.screw.Mass(upper)}, washerMass: p.washer.Mass(),
 	}
 	if p.rules.Round {
 		s.Designation, s.Diameter = "round standoff "+p.size.Size, p.size.Across
 	}
 	return s, nil
+}
+
+// leastEngaged is how far a screw must go into a standoff, over its diameter (common practice, no source:
+// one diameter in steel, where it can be).
+const leastEngaged = 0.8
+
+// screwLength gives the length of a screw through head washer, plate and the washers that lie on the
+// standoff: in by its diameter, at least by leastEngaged of it, and never so deep that it meets the end
+// of the thread or the other screw.
+func (p *pillar) screwLength(standoff float64, shims int) (float64, error) {
+	depth := p.size.Depth(standoff)
+	_, least, most := thickness(p.sheet)
+	thin := least + float64(1+shims)*p.washer.Least
+	thick := most + float64(1+shims)*p.washer.Most
+	var first error
+	for _, in := range []float64{1, leastEngaged} {
+		length, err := p.screw.SureLength(thick + in*p.screw.Diameter)
+		if err != nil {
+			return 0, err
+		}
+		if length-thin <= depth+slack {
+			return length, nil
+		}
+		if first == nil {
+			first = fmt.Errorf("screw %s goes up to %.1f mm into a standoff %s of %g mm, and there is room for %.1f mm: take another size, or another plane for one of the plates",
+				p.screw.Designation(length), length-thin, p.size.Size, standoff, depth)
+		}
+	}
+	return 0, first
 }

@@ -10,7 +10,7 @@ import (
 
 // Tube is a kind of tube and how the spacers and sleeves are cut from it, those to spare included.
 type Tube struct {
-	Designation string  // "tube for M4, outside 8 mm"
+	Designation string  // "tube for 4 mm, outside 8 mm": what goes through, and its outside
 	Bore        float64 // of the bolt or shaft that goes through, mm
 	Outside     float64 // mm
 	Length      float64 // of one tube, mm
@@ -32,7 +32,7 @@ func Tubes(j job.Job, lines []Line) ([]Tube, error) {
 		if l.Outside <= 0 || l.Kind != SpacerLine && l.Kind != SleeveLine {
 			continue
 		}
-		name := fmt.Sprintf("tube for %s, outside %.3g mm", bolted(l.Diameter, l.Designation), l.Outside)
+		name := fmt.Sprintf("tube for %.3g mm, outside %.3g mm", l.Diameter, l.Outside)
 		i := slices.IndexFunc(out, func(t Tube) bool { return t.Designation == name })
 		if i < 0 {
 			i = len(out)
@@ -53,30 +53,6 @@ func Tubes(j job.Job, lines []Line) ([]Tube, error) {
 		}
 	}
 	return out, nil
-}
-
-// bolted names what goes through a tube, from the designation of a spacer or sleeve: "M4", "6 mm shaft".
-func bolted(diameter float64, designation string) string {
-	for _, prefix := range []string{"spacer for ", "sleeve for "} {
-		if rest, ok := cutPrefix(designation, prefix); ok {
-			return rest
-		}
-	}
-	return fmt.Sprintf("%g mm", diameter)
-}
-
-// cutPrefix takes a prefix away, and what follows a comma.
-func cutPrefix(s, prefix string) (string, bool) {
-	if len(s) < len(prefix) || s[:len(prefix)] != prefix {
-		return s, false
-	}
-	s = s[len(prefix):]
-	for i := range len(s) {
-		if s[i] == ',' {
-			return s[:i], true
-		}
-	}
-	return s, true
 }
 
 // tubeLine is a line of the list for a kind of tube.
