@@ -42,15 +42,12 @@ func RodEndFor(diameter float64) (RodEnd, error) {
 // Designation writes the rod end so that any shop knows it: "rod end, bore 5 mm".
 func (e RodEnd) Designation() string { return fmt.Sprintf("rod end, bore %g mm", e.Bore) }
 
-// Tilt is how far the eye turns out of square before it touches a washer of a diameter beside the ball,
-// radians: the face of the eye, half an eye from its middle, tilted by a, stands
-// eye/2 cos a + washer/2 sin a off the middle at the washer's rim, which is half the ball away.
+// Tilt is how far the eye turns out of square before it touches the rim of a washer of a diameter beside
+// the ball, radians: the rim, washer/2 out and half a ball from the middle, lies on the eye's face, which
+// is half an eye from the middle, when ball/2 cos a - washer/2 sin a = eye/2.
 func (e RodEnd) Tilt(washer float64) float64 {
-	rim, half := washer/2, e.Eye/2
-	if rim <= 0 {
-		return math.Pi / 2
-	}
-	return math.Asin(min(1, e.Width/2/math.Hypot(rim, half))) - math.Atan2(half, rim)
+	rim := math.Hypot(washer, e.Width)
+	return math.Acos(min(1, e.Eye/rim)) - math.Atan2(washer, e.Width)
 }
 
 // Mass estimates the mass of a rod end without its shank, g: eye and ball as one solid.

@@ -49,6 +49,10 @@ stock: {clear3: {material: cast acrylic, thickness: 3, sheet: [600, 400], margin
 		{`{default: {bolt: M4, fit: fine, nut: thin}, B: {bearing: 625, in: [rocker]}}`, "B", Pin{Kind: BearingPin, Bearing: "625", Bolt: "M5", Fit: "press", Seats: []string{"rocker"}, Head: "socket", Nut: "thin", Washer: "normal"}},
 		{`{default: {bolt: M4}, D: {bearing: MF105, bolt: M4, fit: N7, in: [back, front, rocker]}}`, "D", Pin{Kind: BearingPin, Bearing: "MF105", Bolt: "M4", Fit: "N7", Seats: []string{"back", "front", "rocker"}, Head: "socket", Nut: "lock", Washer: "normal"}},
 		{`{default: {bolt: M4, fit: fine, head: button}, O: {shaft: 0.25in}}`, "O", Pin{Kind: ShaftPin, Shaft: 6.35, Fit: "running", Washer: "normal"}},
+		{`{default: {bolt: M4, nut: plain}, B: {sleeve: 6, in: [rocker], play: [0.1, 0.4]}}`, "B", Pin{Kind: SleevePin, Bolt: "M4", Sleeve: 6, Seats: []string{"rocker"}, Fit: "running", Head: "socket", Nut: "plain", Washer: "normal", Play: [2]float64{0.1, 0.4}}},
+		{`{default: {bolt: M4, play: [0, 0.2], excess: 5}, A: {clamp: crank}}`, "A", Pin{Kind: ClampPin, Bolt: "M4", Clamped: "crank", Fit: "medium", Head: "socket", Nut: "lock", Washer: "normal", Play: [2]float64{0, 0.2}, Excess: 5}},
+		{`{default: {bolt: M4, play: [0, 0.2]}, B: {bolt: M5, rod-end: head}}`, "B", Pin{Kind: RodEndPin, Bolt: "M5", RodEnd: HeadSide, Fit: "medium", Head: "socket", Nut: "lock", Washer: "normal"}},
+		{`{default: {bolt: M4, excess: 5}, O: {shaft: 6, retain: ring}}`, "O", Pin{Kind: ShaftPin, Shaft: 6, Retain: RingRetainer, Fit: "running", Washer: "normal"}},
 		{`{default: {shaft: 6, fit: sliding}}`, "A", Pin{Kind: ShaftPin, Shaft: 6, Fit: "sliding", Washer: "normal"}},
 	} {
 		got := read(c.pins)[c.joint]

@@ -16,7 +16,17 @@
 //     thread past the nut by at least one pitch (two past a locknut). On the thinnest stack the nut must
 //     not run onto the shank.
 //
-// One pass, no search: time in proportion to the pins and the planes. Whether a part sweeps across a
+// A sleeve is cut so much longer than the part that turns on it that the least play is left when the
+// part is thickest and the sleeve shortest. A link to which the bolt is clamped has a thin nut between it
+// and its neighbour, which counts as part of what fills that gap. A bolt that would be too long has
+// washers put under its nut. Budgets are given at the worst and by root-sum-square; bolts and sleeves are
+// chosen at the worst.
+//
+// Where spacers are bought, gaps are widened until stock lengths and washers fill them; where the frame
+// has standoffs, the gap under the upper plate is widened until one of their stock lengths fits with as
+// few washers as will do, and all pins still fill theirs.
+//
+// One pass, no search: time in proportion to the pins and the planes (and to the stock lengths where there are). Whether a part sweeps across a
 // head, a nut or a spacer is geometry and not seen here; the elements of a kit have their heights and
 // diameters for that.
 //
