@@ -86,6 +86,28 @@ func TestCrossMember(t *testing.T) {
 	}
 }
 
+// Both plates have the clearance holes of the standoffs (M3 medium, ISO 273: 3.4 mm), and are drawn wide enough.
+func TestStandoffHoles(t *testing.T) {
+	for _, name := range []string{"back", "front"} {
+		p := part(t, name, framed, func(j *job.Job) {
+			j.Frame.Standoffs = &job.Standoffs{At: []outline.Point{pt(-60, -70), pt(140, -70)}, Bolt: "M3", Fit: "medium"}
+		})
+		n := 0
+		for _, h := range p.Holes {
+			if strings.HasPrefix(h.Name, "standoff") {
+				n++
+				near(t, h.Name, h.Diameter, 3.4, 1e-12)
+				if h.Kind != BoltHole || p.Region.Locate(h.Centre.Add(pt(3, 0))) != outline.Inside {
+					t.Errorf("%s: %+v", name, h)
+				}
+			}
+		}
+		if n != 2 {
+			t.Errorf("%s has %d holes for standoffs", name, n)
+		}
+	}
+}
+
 // A plate between the outermost ones lets the member through.
 func TestCrossMemberThroughAPlate(t *testing.T) {
 	p := part(t, "middle", framed, func(j *job.Job) {

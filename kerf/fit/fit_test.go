@@ -236,6 +236,25 @@ func TestHolesOfAJob(t *testing.T) {
 	}
 }
 
+// A sleeve has the hole that turns on it and the closest one for its bolt; a clamped bolt the hole of what
+// turns and the closest one in the crank.
+func TestHolesOfKinds(t *testing.T) {
+	holes, err := Holes(job.Job{Pins: []job.Pin{
+		{Joint: "B", Kind: job.SleevePin, Bolt: "M4", Sleeve: 6, Fit: "running", Seats: []string{"coupler"}},
+		{Joint: "A", Kind: job.ClampPin, Bolt: "M4", Fit: "medium", Clamped: "crank"},
+	}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	var got []string
+	for _, h := range holes {
+		got = append(got, h.Joint+" "+h.What)
+	}
+	if want := "B shaft 6, running; B bolt M4, fine; A bolt M4, medium; A bolt M4, fine"; strings.Join(got, "; ") != want {
+		t.Errorf("%s\nwant %s", strings.Join(got, "; "), want)
+	}
+}
+
 func ExampleForChance() {
 	p := profile.Profile{
 		Material: "cast acrylic", Thickness: 3, Freedom: 20, Centre: 4, Smallest: 3, Largest: 6,

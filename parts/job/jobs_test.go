@@ -89,7 +89,8 @@ func complete(t *testing.T, j Job) {
 	}
 	var want []string
 	for _, joint := range j.Linkage.Joints {
-		if on[joint.Name] > 1 || joint.Ground != nil {
+		rodEnd := slices.ContainsFunc(j.Pins, func(p Pin) bool { return p.Joint == joint.Name && p.Kind == RodEndPin })
+		if on[joint.Name] > 1 || joint.Ground != nil || rodEnd && on[joint.Name] == 1 {
 			want = append(want, joint.Name)
 		}
 	}

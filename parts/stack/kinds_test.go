@@ -417,7 +417,7 @@ func TestKindsRefused(t *testing.T) {
 
 // The job with every kind of pin, from the file to the list.
 func TestKindsFile(t *testing.T) {
-	j, err := job.Read("testdata/kinds.yaml")
+	j, err := job.Read("../../testdata/jobs/kinds.yaml")
 	if err != nil {
 		t.Fatal(err)
 	}
