@@ -77,6 +77,9 @@ func alone(j job.Job, which int, members []int, apart int) job.Job {
 	}
 	j = placed(single(j), on)
 	j.Pins = []job.Pin{j.Pins[which]}
+	if j.Frame != nil {
+		j.Frame.Standoffs = nil // their plates have no true places here; placed gave a frame of its own
+	}
 	return j
 }
 

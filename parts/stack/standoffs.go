@@ -46,6 +46,7 @@ type pillar struct {
 	washer    hardware.Washer
 	sheet     job.Stock
 	low, high int // planes of the plates
+	heights   []height
 }
 
 // findPillar looks up the standoffs; nil when there are none.
@@ -87,24 +88,55 @@ func findPillar(j job.Job) (*pillar, error) {
 	if p.washer, err = hardware.WasherFor(hardware.NormalWasher, p.rules.Bolt); err != nil {
 		return fail(err, "")
 	}
+	if err := p.measure(); err != nil {
+		return fail(err, "")
+	}
 	return &p, nil
+}
+
+// height is what a stock length and washers come to, with the screws that suit it.
+type height struct {
+	length       float64
+	washers      int
+	lower, upper float64 // lengths of the screws
+}
+
+// measure finds the heights that can be had.
+func (p *pillar) measure() error {
+	var first error
+	for n := range mostShims + 1 {
+		for _, l := range p.size.Lengths {
+			lower, err := p.screwLength(l, 0)
+			upper := lower
+			if err == nil && n > 0 {
+				upper, err = p.screwLength(l, n)
+			}
+			if err == nil {
+				p.heights = append(p.heights, height{l, n, lower, upper})
+			} else if first == nil {
+				first = err
+			}
+		}
+	}
+	if len(p.heights) == 0 {
+		return first
+	}
+	return nil
 }
 
 // mostShims is how many washers may lie on a standoff.
 const mostShims = 4
 
-// reach gives the stock length and the washers that come to a distance or as little over it as may be,
-// the fewest washers first among equals, and by how much they are over.
-func (p *pillar) reach(distance float64) (length float64, washers int, over float64, ok bool) {
+// reach gives the height that comes to a distance or as little over it as may be, the fewest washers first
+// among equals, and by how much it is over.
+func (p *pillar) reach(distance float64) (best height, over float64, ok bool) {
 	over = math.Inf(1)
-	for n := range mostShims + 1 {
-		for _, l := range p.size.Lengths {
-			if o := tidy(l + float64(n)*p.washer.Thickness - distance); o >= -slack && o < over-slack {
-				length, washers, over, ok = l, n, max(0, o), true
-			}
+	for _, h := range p.heights {
+		if o := tidy(h.length + float64(h.washers)*p.washer.Thickness - distance); o >= -slack && o < over-slack {
+			best, over, ok = h, max(0, o), true
 		}
 	}
-	return length, washers, over, ok
+	return best, over, ok
 }
 
 // widen gives the smallest gap under the upper plate, not under one, that the standoffs and all pins can
@@ -112,7 +144,7 @@ func (p *pillar) reach(distance float64) (length float64, washers int, over floa
 func (p *pillar) widen(gap, plateTop, gapBottom float64, crossings []crossing) (float64, error) {
 	first := tidy(gapBottom + gap - plateTop)
 	for range mostTries {
-		_, _, over, ok := p.reach(gapBottom + gap - plateTop)
+		_, over, ok := p.reach(gapBottom + gap - plateTop)
 		if !ok {
 			break
 		}
@@ -121,7 +153,7 @@ func (p *pillar) widen(gap, plateTop, gapBottom float64, crossings []crossing) (
 		}
 		gap = smallestGap(gap+over, crossings)
 	}
-	return gap, fmt.Errorf("the plates stand %.2f mm apart or more, and no stock length of standoff %s (%s mm) with up to %d washers of %g mm comes to a height that the pins can fill too: take another size, another plane for one of the plates, or cross members",
+	return gap, fmt.Errorf("the plates stand %.2f mm apart or more, and no stock length of standoff %s (%s mm) with up to %d washers of %g mm comes to a height that the pins can fill too and has room for its screws: take another size, another plane for one of the plates, or cross members",
 		first, p.size.Size, lengthsInWords(p.size.Lengths), mostShims, p.washer.Thickness)
 }
 
@@ -135,21 +167,14 @@ func lengthsInWords(lengths []float64) string {
 
 // stand makes the standoffs between two heights.
 func (p *pillar) stand(from, to float64) (*Standoff, error) {
-	l, n, over, ok := p.reach(to - from)
-	if !ok || over > slack {
+	h, over, ok := p.reach(to - from)
+	if !ok || over > slack || to <= from {
 		return nil, fmt.Errorf("no stock length of standoff %s fills %.2f mm", p.size.Size, to-from)
 	}
-	lower, err := p.screwLength(l, 0)
-	if err != nil {
-		return nil, err
-	}
-	upper, err := p.screwLength(l, n)
-	if err != nil {
-		return nil, err
-	}
+	l, lower, upper := h.length, h.lower, h.upper
 	s := &Standoff{
 		At: slices.Clone(p.rules.At), Length: l, Diameter: p.size.Across * 2 / math.Sqrt(3),
-		Designation: "hexagon standoff " + p.size.Size, Washer: p.washer.Designation(), Washers: n,
+		Designation: "hexagon standoff " + p.size.Size, Washer: p.washer.Designation(), Washers: h.washers,
 		Screws: [2]string{p.screw.Designation(lower), p.screw.Designation(upper)}, Lengths: [2]float64{lower, upper},
 		From: from, To: to,
 		Head: p.screw.HeadHeight + p.washer.Thickness, HeadWide: max(p.screw.HeadDiameter, p.washer.Outside),
@@ -183,7 +208,7 @@ func (p *pillar) screwLength(standoff float64, shims int) (float64, error) {
 			return length, nil
 		}
 		if first == nil {
-			first = fmt.Errorf("screw %s goes up to %.1f mm into a standoff %s of %g mm, and there is room for %.1f mm: take another size, or another plane for one of the plates",
+			first = fmt.Errorf("screw %s goes up to %.1f mm into a standoff %s of %g mm, and there is room for %.1f mm: take another size, or thicker plates",
 				p.screw.Designation(length), length-thin, p.size.Size, standoff, depth)
 		}
 	}
